@@ -1,0 +1,2 @@
+export { Catalogue } from './catalogue/catalogue';
+export { type Measured, measured } from './quantity/measured';
