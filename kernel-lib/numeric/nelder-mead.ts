@@ -32,7 +32,7 @@ export function nelderMead(
     const y = f(v);
     return Number.isNaN(y) ? Number.POSITIVE_INFINITY : y;
   };
-  let best = Float64Array.from(start);
+  let best: Float64Array = Float64Array.from(start);
   let bestValue = value(best);
   let converged = false;
   for (let round = 0; round < 8; round++) {
