@@ -1,5 +1,6 @@
 import { convergence } from '../numeric/convergence';
 import { sampleEnsemble } from '../numeric/ensemble-sampler';
+import { sampleIndependence } from '../numeric/independence-sampler';
 import { nelderMead } from '../numeric/nelder-mead';
 import type { ErrorPoints } from '../numeric/regression/york';
 import { sortedQuantile } from '../quantity/measured';
@@ -318,27 +319,40 @@ function sample(
     }
     starts.set(trial, w * d);
   }
-  // Each round continues where the last one ended, with twice the steps; all before it counts as warm-up.
-  for (let round = 0, steps = 250, from = starts; ; round++, steps *= 2) {
-    const chain = sampleEnsemble(logPosterior, from, d, stream.fork(2 + round), {
-      warmUp: round === 0 ? 500 : 0,
-      steps,
-      thin: THIN,
-      onProgress,
-    });
-    let rHat = 0;
-    let effectiveSampleSize = Number.POSITIVE_INFINITY;
-    for (let k = 0; k < d; k++) {
-      const c = convergence(chain.samples, walkers, d, k);
-      rHat = Math.max(rHat, c.rHat);
-      effectiveSampleSize = Math.min(effectiveSampleSize, c.effectiveSampleSize);
-    }
-    const stopped = chain.steps < steps;
-    if (stopped || effectiveSampleSize >= draws || round === 5) {
-      return { samples: chain.samples, rHat, effectiveSampleSize };
+  // A short ensemble run finds the shape; independent proposals of that shape then give draws that are nearly independent.
+  const pilot = sampleEnsemble(logPosterior, starts, d, stream.fork(2), {
+    warmUp: 400,
+    steps: 150,
+    thin: THIN,
+    onProgress,
+  });
+  if (pilot.steps < 150) return { samples: pilot.samples, ...worst(pilot.samples, walkers, d) };
+  const refined = sampleIndependence(logPosterior, pilot.samples, d, 16, Math.ceil(draws / 4), stream.fork(3));
+  const quality = worst(refined.samples, 16, d);
+  if (refined.acceptance > 0.15 && quality.effectiveSampleSize > draws / 2) {
+    return { samples: refined.samples, ...quality };
+  }
+  // The posterior has more than one hump or long arms: let the ensemble go on, twice as long each round.
+  let from = pilot.samples.slice((pilot.steps - 1) * walkers * d);
+  for (let round = 0, steps = 500; ; round++, steps *= 2) {
+    const chain = sampleEnsemble(logPosterior, from, d, stream.fork(4 + round), { steps, thin: THIN, onProgress });
+    const found = worst(chain.samples, walkers, d);
+    if (chain.steps < steps || found.effectiveSampleSize >= draws || round === 4) {
+      return { samples: chain.samples, ...found };
     }
     from = chain.samples.slice((chain.steps - 1) * walkers * d);
   }
+}
+
+function worst(samples: Float64Array, chains: number, d: number) {
+  let rHat = 0;
+  let effectiveSampleSize = Number.POSITIVE_INFINITY;
+  for (let k = 0; k < d; k++) {
+    const c = convergence(samples, chains, d, k);
+    rHat = Math.max(rHat, c.rHat);
+    effectiveSampleSize = Math.min(effectiveSampleSize, c.effectiveSampleSize);
+  }
+  return { rHat, effectiveSampleSize };
 }
 
 function unpackDraws(shape: Shape, samples: Float64Array): BrokenLineFit['draws'] {
