@@ -1,0 +1,164 @@
+import type { Fits } from './fits';
+import type { LifeSource } from './moments';
+import { Giant, heliumBurningLuminosity, heliumBurningRadius, setGiant } from './phases/giant';
+import { asymptoticRadius, giantRadius } from './phases/giant-fits';
+import {
+  HOOK_WIDTH,
+  MainSequence,
+  mainSequenceState,
+  setMainSequenceShape,
+  setMainSequenceTimes,
+} from './phases/main-sequence';
+import { PHASE, type StarState } from './phases/phase';
+import { coolingLuminosity, coreBaryons, NEUTRON_STAR_RADIUS, whiteDwarfRadiusLaw } from './phases/white-dwarf-law';
+
+/** One star's whole life without winds. Set it for a mass, then ask for states; it is reused from star to star. */
+export class Life implements LifeSource {
+  readonly main: MainSequence = new MainSequence();
+  readonly giant: Giant = new Giant();
+  private fits: Fits;
+  private shaped = false;
+  private evolved = false;
+
+  constructor(fits: Fits) {
+    this.fits = fits;
+  }
+
+  /** Chooses the metallicity. */
+  useFits(fits: Fits): void {
+    this.fits = fits;
+  }
+
+  /** Chooses the star; the later life is worked out when it is first asked for. */
+  setMass(mass: number): void {
+    setMainSequenceTimes(this.fits, mass, this.main);
+    this.shaped = false;
+    this.evolved = false;
+  }
+
+  private shape(): void {
+    if (this.shaped) return;
+    setMainSequenceShape(this.fits, this.main);
+    this.shaped = true;
+  }
+
+  private evolveOn(): void {
+    if (this.evolved) return;
+    setGiant(this.fits, this.main, this.giant);
+    this.evolved = true;
+  }
+
+  /**
+   * Time of a moment, Myr: 0 and 1 start and end of the hook, 2 end of the main sequence, 3 base of the giant branch,
+   * 4 helium ignition, 5 base of the asymptotic branch, 6 second dredge-up, 7 end.
+   */
+  moment(k: number): number {
+    if (k === 0) return (1 - HOOK_WIDTH) * this.main.timeHook;
+    if (k === 1) return this.main.timeHook;
+    if (k === 2) return this.main.timeEnd;
+    if (k === 3) return this.main.timeBase;
+    this.evolveOn();
+    if (k === 4) return this.giant.timeIgnition;
+    if (k === 5) return this.giant.timeEnding;
+    if (k === 6) return this.giant.timeDredge;
+    return this.giant.timeEnd;
+  }
+
+  /** Phase at a time in Myr. */
+  phaseAt(time: number): number {
+    const { main, giant } = this;
+    if (time <= main.timeEnd) return PHASE.mainSequence;
+    this.evolveOn();
+    if (time >= giant.timeEnd) return giant.remnant;
+    if (time <= main.timeBase) return PHASE.hertzsprungGap;
+    if (time <= giant.timeIgnition) return PHASE.giantBranch;
+    if (time <= giant.timeEnding) return PHASE.coreHelium;
+    return time <= giant.timeDredge ? PHASE.earlyAsymptotic : PHASE.pulsingAsymptotic;
+  }
+
+  /** State at a time in Myr, in the phase given: at the border of two phases either may be asked for. */
+  stateIn(phase: number, time: number, out: StarState): void {
+    const { main, giant, fits } = this;
+    if (phase === PHASE.mainSequence) {
+      this.shape();
+      mainSequenceState(main, time, out);
+      return;
+    }
+    this.evolveOn();
+    out.phase = phase;
+    out.mass = main.mass;
+    switch (phase) {
+      case PHASE.hertzsprungGap: {
+        this.shape();
+        const tau = clampShare((time - main.timeEnd) / (main.timeBase - main.timeEnd));
+        out.luminosity = main.luminosityEnd * Math.exp(tau * Math.log(giant.luminosityGapEnd / main.luminosityEnd));
+        out.radius = main.radiusEnd * Math.exp(tau * Math.log(giant.radiusGapEnd / main.radiusEnd));
+        const m525 = Math.exp(5.25 * main.lnMass);
+        const rho = (1.586 + m525) / (2.434 + 1.02 * m525);
+        out.coreMass = ((1 - tau) * rho + tau) * (giant.early ? giant.coreIgnition : giant.coreBase);
+        return;
+      }
+      case PHASE.giantBranch: {
+        const clocked = giant.branch.coreAtTime(Math.min(Math.max(time, main.timeBase), giant.timeIgnition));
+        out.luminosity = giant.branch.luminosityAtCore(clocked);
+        out.radius = giantRadius(fits.b, giant.giantFactor, out.luminosity);
+        const share = clampShare((time - main.timeBase) / (giant.timeIgnition - main.timeBase));
+        out.coreMass = giant.flash ? clocked : giant.coreBase + (giant.coreIgnition - giant.coreBase) * share;
+        return;
+      }
+      case PHASE.coreHelium: {
+        const tau = clampShare((time - giant.timeIgnition) / giant.duration);
+        out.luminosity = heliumBurningLuminosity(giant, tau);
+        out.radius = heliumBurningRadius(fits.b, giant, tau, out.luminosity);
+        out.coreMass = (1 - tau) * giant.coreIgnition + tau * giant.coreEnding;
+        return;
+      }
+      case PHASE.earlyAsymptotic: {
+        const core = giant.earlyClock.coreAtTime(Math.min(Math.max(time, giant.timeEnding), giant.timeDredge));
+        out.luminosity = giant.earlyClock.luminosityAtCore(core);
+        out.radius = asymptoticRadius(fits.b, giant.asymptoticFactor, giant.asymptoticExponent, out.luminosity);
+        out.coreMass = giant.coreEnding;
+        return;
+      }
+      case PHASE.pulsingAsymptotic: {
+        const core = giant.pulsingClock.coreAtTime(Math.min(Math.max(time, giant.timeDredge), giant.timeEnd));
+        out.luminosity = giant.pulsingClock.luminosityAtCore(core);
+        out.radius = asymptoticRadius(fits.b, giant.asymptoticFactor, giant.asymptoticExponent, out.luminosity);
+        out.coreMass = giant.coreDredge + (1 - giant.lambda) * (core - giant.coreDredge);
+        return;
+      }
+      default:
+        remnantState(phase, giant.remnantMass, fits.z, time - giant.timeEnd, out);
+    }
+  }
+
+  /** State at a time in Myr. */
+  state(time: number, out: StarState): void {
+    this.stateIn(this.phaseAt(time), time, out);
+  }
+}
+
+/** A dead star at a time in Myr after its end. Source: Hurley, Pols & Tout 2000, section 6.2; white dwarfs Hurley & Shara 2003. */
+export function remnantState(phase: number, mass: number, z: number, age: number, out: StarState): void {
+  const since = Math.max(0, age);
+  out.phase = phase;
+  out.mass = mass;
+  out.coreMass = mass;
+  if (phase === PHASE.noRemnant) {
+    out.luminosity = 0;
+    out.radius = 0;
+  } else if (phase === PHASE.neutronStar) {
+    out.luminosity = (0.02 * mass ** (2 / 3)) / Math.max(since, 0.1) ** 2;
+    out.radius = NEUTRON_STAR_RADIUS;
+  } else if (phase === PHASE.blackHole) {
+    out.luminosity = 1e-10;
+    out.radius = 4.24e-6 * mass;
+  } else {
+    out.luminosity = coolingLuminosity(mass, z, coreBaryons(phase), since);
+    out.radius = whiteDwarfRadiusLaw(mass);
+  }
+}
+
+function clampShare(x: number): number {
+  return x > 0 ? (x < 1 ? x : 1) : 0;
+}
