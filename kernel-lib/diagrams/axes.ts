@@ -5,7 +5,8 @@ export type AxisObject = Readonly<Record<string, unknown>>;
 
 const GRID = 'rgba(128,128,128,0.18)';
 const LINE = 'rgba(128,128,128,0.7)';
-const COMMON = {
+/** What every axis shares. */
+export const COMMON_AXIS: AxisObject = {
   gridcolor: GRID,
   linecolor: LINE,
   tickcolor: LINE,
@@ -14,7 +15,7 @@ const COMMON = {
   ticks: 'outside',
   ticklen: 5,
   automargin: true,
-} as const;
+};
 
 /**
  * A linear axis.
@@ -23,7 +24,13 @@ const COMMON = {
 export function linearAxis(title: string, range: readonly [number, number], more: AxisObject = {}): AxisObject {
   const places = 4 - Math.floor(Math.log10(Math.abs(range[1] - range[0]) || 1));
   const round = (v: number) => Number(v.toFixed(Math.min(12, Math.max(0, places))));
-  return { ...COMMON, title: { text: title }, type: 'linear', range: [round(range[0]), round(range[1])], ...more };
+  return {
+    ...COMMON_AXIS,
+    title: { text: title, standoff: 10 },
+    type: 'linear',
+    range: [round(range[0]), round(range[1])],
+    ...more,
+  };
 }
 
 /**
@@ -34,8 +41,8 @@ export function logAxis(title: string, range: readonly [number, number], more: A
   const ends = [Math.log10(range[0]), Math.log10(range[1])].map((v) => Math.round(v * 1e4) / 1e4);
   const values = logTicks(Math.min(...range), Math.max(...range));
   return {
-    ...COMMON,
-    title: { text: title },
+    ...COMMON_AXIS,
+    title: { text: title, standoff: 10 },
     type: 'log',
     range: ends,
     tickmode: 'array',
@@ -90,7 +97,7 @@ export function baseLayout(title: string, height = 560): Readonly<Record<string,
     font: { size: 13, color: '#767676' },
     hovermode: 'closest',
     margin: { l: 70, r: 20, t: 60, b: 60 },
-    legend: { x: 1.02, y: 1, xanchor: 'left', yanchor: 'top', itemsizing: 'constant' },
+    legend: { x: 1.02, y: 1, xanchor: 'left', yanchor: 'top' },
   };
 }
 

@@ -59,3 +59,9 @@ export function markTrace(
     hovertemplate: `${name}<br>${unit.x}: %{x}<br>${unit.y}: %{y}<extra></extra>`,
   };
 }
+
+/** A curve's coordinates with a gap before each place at which a new piece starts. */
+export function brokenAt(values: (number | null)[], breaks: ArrayLike<number> | undefined): (number | null)[] {
+  const starts = new Set(Array.from(breaks ?? []));
+  return values.flatMap((v, i) => (i > 0 && starts.has(i) ? [null, v] : [v]));
+}

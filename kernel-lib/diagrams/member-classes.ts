@@ -18,7 +18,7 @@ const CLASSES = [
     name: 'p < 0.5',
     color: PALETTE.slate,
     symbol: 'circle',
-    opacity: 0.4,
+    opacity: 0.55,
     background: true,
   },
   { from: 0.5, name: '0.5 \u2264 p < 0.9', color: PALETTE.amber, symbol: 'diamond', opacity: 0.95, background: false },

@@ -56,12 +56,14 @@ export function parallaxHistogram(catalogue: Catalogue, options: ParallaxHistogr
     data.push(bars(`members, by probability (${expected.toFixed(0)})`, members, range, PALETTE.azure, 0.85));
     highest = Math.max(highest, ...members);
   }
+  const top = highest * 1.08;
+  if (parallax) data.push(parallaxLine(parallax, top));
   const layout = {
     ...baseLayout(plotText(title), 460),
     xaxis: linearAxis('parallax (mas)', range),
-    yaxis: linearAxis('stars', [0, highest * 1.08]),
+    yaxis: linearAxis('stars', [0, top]),
     barmode: 'overlay',
-    ...(parallax ? { shapes: parallaxMarks(parallax), annotations: [parallaxNote(parallax)] } : {}),
+    shapes: parallax ? [parallaxBand(parallax)] : [],
   };
   return new Figure(data, layout, title);
 }
@@ -105,24 +107,19 @@ function bars(
   };
 }
 
-function parallaxMarks(parallax: Measured): object[] {
-  const band = { type: 'rect', x0: parallax.lower, x1: parallax.upper, y0: 0, y1: 1, yref: 'paper', layer: 'below' };
-  const line = { type: 'line', x0: parallax.value, x1: parallax.value, y0: 0, y1: 1, yref: 'paper' };
-  return [
-    { ...band, fillcolor: translucent(PALETTE.crimson, 0.2), line: { width: 0 } },
-    { ...line, line: { color: PALETTE.crimson, width: 1.5, dash: 'dash' } },
-  ];
+function parallaxBand(parallax: Measured): object {
+  const ends = { type: 'rect', x0: parallax.lower, x1: parallax.upper, y0: 0, y1: 1, yref: 'paper', layer: 'below' };
+  return { ...ends, fillcolor: translucent(PALETTE.crimson, 0.2), line: { width: 0 } };
 }
 
-function parallaxNote(parallax: Measured): object {
+function parallaxLine(parallax: Measured, top: number): FigureTrace {
   return {
-    x: parallax.value,
-    y: 1,
-    yref: 'paper',
-    text: plotText(String(parallax)),
-    showarrow: false,
-    xanchor: 'left',
-    yanchor: 'top',
-    xshift: 6,
+    type: 'scatter',
+    mode: 'lines',
+    name: `cluster, ${plotText(String(parallax))}`,
+    x: rounded([parallax.value, parallax.value], 5),
+    y: rounded([0, top], 2),
+    line: { color: PALETTE.crimson, width: 1.5, dash: 'dash' },
+    hoverinfo: 'name',
   };
 }

@@ -84,12 +84,12 @@ interface Spread {
   readonly high: number[];
 }
 
-/** Median and 16-84 % of the residuals in groups of neighbours in x: at most 20 groups of at least 15 stars. */
+/** Median and 16-84 % of the residuals in groups of neighbours in x: at most 20 groups of at least 25 stars. */
 function runningSpread(x: ArrayLike<number>, residual: ArrayLike<number>): Spread {
   const order = Array.from({ length: x.length }, (_, i) => i)
     .filter((i) => Number.isFinite(x[i]) && Number.isFinite(residual[i]))
     .sort((a, b) => x[a] - x[b]);
-  const groups = Math.min(20, Math.floor(order.length / 15));
+  const groups = Math.min(20, Math.floor(order.length / 25));
   const spread: Spread = { x: [], median: [], low: [], high: [] };
   for (let g = 0; g < groups; g++) {
     const rows = order.slice(Math.floor((g * order.length) / groups), Math.floor(((g + 1) * order.length) / groups));

@@ -14,7 +14,7 @@ import {
 import { drawAnnotation, drawShape } from './svg/draw-notes';
 import { drawText, px } from './svg/draw-text';
 import { drawTrace } from './svg/draw-trace';
-import { INKS, type StaticTheme } from './svg/ink';
+import { INKS, type Ink, type StaticTheme } from './svg/ink';
 import type { LayoutSpec, TraceSpec } from './svg/plotly-subset';
 
 /** Options of `staticFigure`. */
@@ -29,11 +29,13 @@ export interface StaticFigureOptions {
 
 const TITLE_SIZE = 15;
 const EDGE = 12;
+/** Characters for all markers of a picture together. */
+const MARKER_BUDGET = 90_000;
 const FONT = "system-ui,'Segoe UI',Helvetica,Arial,'DejaVu Sans',sans-serif";
 
 /**
- * A still picture of a figure, for places where no script runs. Transparent background; at most about 60 kB a trace
- * however many points there are (markers on nearly the same place are drawn once).
+ * A still picture of a figure, for places where no script runs. Transparent background; markers on nearly the same
+ * place are drawn once, so that a picture of any number of stars stays near 100 kB.
  * @param figure  any figure made by the builders of this room
  * @param options size and background, see StaticFigureOptions
  * @returns an SVG document
@@ -78,15 +80,21 @@ export function staticFigure(
   const all = [...axes.values()];
   const across = (axis: PlacedAxis): PlacedAxis =>
     axes.get(axis.anchor) ?? (axes.get(axis.horizontal ? 'y' : 'x') as PlacedAxis);
-  const shapes = (layout.shapes ?? []).map((shape) => drawShape(shape, axes, area, ink));
+  const shapes = (where: 'below' | 'above') =>
+    (layout.shapes ?? [])
+      .filter((shape) => (shape.layer ?? 'above') === where)
+      .map((shape) => drawShape(shape, axes, area, ink));
+  const points = data.reduce((sum, trace) => sum + (trace.x?.length ?? 0), 0);
+  const budgetOf = (trace: TraceSpec) => MARKER_BUDGET * Math.max(0.05, (trace.x?.length ?? 0) / Math.max(1, points));
   const notes = (layout.annotations ?? []).map((note) => drawAnnotation(note, axes, area, ink));
   return [
     `<svg xmlns="http://www.w3.org/2000/svg" width="${px(width)}" height="${px(height)}" viewBox="0 0 ${px(width)} ${px(height)}" font-family="${FONT}" role="img">`,
     `<title>${escapeHtml(plainText(title))}</title>`,
     title === '' ? '' : drawText(title, EDGE, EDGE + TITLE_SIZE, { size: TITLE_SIZE, color: ink.text, bold: true }),
     ...all.filter((a) => a.spec.overlaying === undefined).map((axis) => drawGrid(axis, across(axis), ink)),
-    ...shapes,
-    ...plots(data, axes).map((plot) => inClip(plot.area, drawPlot(plot, ink))),
+    ...shapes('below'),
+    ...plots(data, axes).map((plot) => inClip(plot.area, drawPlot(plot, ink, budgetOf))),
+    ...shapes('above'),
     ...all.map((axis) => drawAxis(axis, across(axis), ink)),
     ...notes,
     below
@@ -135,8 +143,10 @@ function plots(data: readonly TraceSpec[], axes: ReadonlyMap<string, PlacedAxis>
   });
 }
 
-function drawPlot(plot: Plot, ink: (typeof INKS)[StaticTheme]): string {
-  return plot.traces.map((trace, i) => drawTrace(trace, plot.traces[i - 1], plot.xAxis, plot.yAxis, ink)).join('');
+function drawPlot(plot: Plot, ink: Ink, budgetOf: (trace: TraceSpec) => number): string {
+  return plot.traces
+    .map((trace, i) => drawTrace(trace, plot.traces[i - 1], plot.xAxis, plot.yAxis, ink, budgetOf(trace)))
+    .join('');
 }
 
 /** An inner document of the plot's size cuts off what lies outside, without ids that could clash between pictures. */

@@ -6,12 +6,14 @@ export const TICK_SIZE = 12;
 export const AXIS_TITLE_SIZE = 13;
 const TICK_LENGTH = 5;
 const GAP = 4;
+/** Room for what hangs beneath the line of a title, subscripts included. */
+const DESCENT = 6;
 
 /** Room in px that labels and title of an axis take outside the plot. */
 export function axisRoom(axis: { horizontal: boolean; ticks: PlacedAxis['ticks']; spec: PlacedAxis['spec'] }): number {
   if (axis.spec.visible === false) return 0;
   const title = axis.spec.title?.text ?? '';
-  const titleRoom = title === '' ? 0 : textHeight(title, AXIS_TITLE_SIZE) + GAP;
+  const titleRoom = title === '' ? 0 : textHeight(title, AXIS_TITLE_SIZE) + DESCENT;
   return tickRoom(axis) + titleRoom;
 }
 
@@ -98,18 +100,13 @@ function spacedTicks(axis: PlacedAxis, size: number): PlacedAxis['ticks'] {
 function drawTitle(title: string, axis: PlacedAxis, edge: number, outward: number, ink: Ink): string {
   const middle = (axis.start + axis.end) / 2;
   const style = { size: AXIS_TITLE_SIZE, color: ink.text, anchor: 'middle' as const };
-  const past = tickRoom(axis) + GAP;
+  const past = tickRoom(axis) + 2;
+  const extra = textHeight(title, AXIS_TITLE_SIZE) - textHeight('', AXIS_TITLE_SIZE);
   if (axis.horizontal) {
-    const y =
-      outward > 0
-        ? edge + past + AXIS_TITLE_SIZE * 0.9
-        : edge - past - textHeight(title, AXIS_TITLE_SIZE) + AXIS_TITLE_SIZE;
+    const y = outward > 0 ? edge + past + AXIS_TITLE_SIZE * 0.9 : edge - past - extra - DESCENT;
     return drawText(title, middle, y, style);
   }
   // Turned text has its baseline on the right of where it starts when it reads upward.
-  const x =
-    outward > 0
-      ? edge + past + AXIS_TITLE_SIZE * 0.85
-      : edge - past - textHeight(title, AXIS_TITLE_SIZE) + AXIS_TITLE_SIZE;
+  const x = outward > 0 ? edge + past + AXIS_TITLE_SIZE * 0.85 : edge - past - extra - DESCENT;
   return drawText(title, x, middle, { ...style, angle: -90 });
 }

@@ -90,7 +90,13 @@ function drawEntry(entry: TraceSpec, x: number, y: number, ink: Ink): string {
   if (mode.includes('markers')) {
     const marker = entry.marker ?? {};
     const size = Math.max(6, Math.min(12, marker.size ?? 6));
-    const path = markerPath(Float64Array.of(x + KEY / 2), Float64Array.of(middle), marker.symbol ?? 'circle', size);
+    const path = markerPath(
+      Float64Array.of(x + KEY / 2),
+      Float64Array.of(middle),
+      marker.symbol ?? 'circle',
+      size,
+      1000,
+    );
     const fill = color(marker.color ?? ink.text);
     parts.push(
       path.kind === 'outline'

@@ -13,9 +13,10 @@ export function drawTrace(
   xAxis: PlacedAxis,
   yAxis: PlacedAxis,
   ink: Ink,
+  budget: number,
 ): string {
   if (trace.visible === false || trace.visible === 'legendonly') return '';
-  const place = { xAxis, yAxis, ink };
+  const place = { xAxis, yAxis, ink, budget };
   let body: string;
   if (trace.type === 'bar') body = drawBars(trace, place);
   else if (trace.type === 'heatmap') body = drawHeatmap(trace, place);
@@ -31,6 +32,8 @@ interface Place {
   readonly xAxis: PlacedAxis;
   readonly yAxis: PlacedAxis;
   readonly ink: Ink;
+  /** Longest marker path, characters. */
+  readonly budget: number;
 }
 
 function drawScatter(trace: TraceSpec, before: TraceSpec | undefined, place: Place): string {
@@ -122,14 +125,14 @@ function drawErrors(
 
 function drawMarkers(trace: TraceSpec, xs: Float64Array, ys: Float64Array, place: Place): string {
   const marker = trace.marker ?? {};
-  const path = markerPath(xs, ys, marker.symbol ?? 'circle', marker.size ?? 6);
+  const path = markerPath(xs, ys, marker.symbol ?? 'circle', marker.size ?? 6, place.budget);
   if (path.d === '') return '';
   const ink = color(marker.color ?? place.ink.text);
   const edge = marker.line?.width ? strokeAttributes(marker.line, place.ink.text, 1) : '';
   const faint = marker.opacity === undefined || marker.opacity === 1 ? '' : ` opacity="${marker.opacity}"`;
   if (path.kind === 'outline') return `<path d="${path.d}" fill="${ink}" ${edge}${faint}/>`;
   if (path.kind === 'stroke')
-    return `<path d="${path.d}" fill="none" stroke="${ink}" stroke-width="${marker.line?.width ?? 1.5}"${faint}/>`;
+    return `<path d="${path.d}" fill="none" stroke="${ink}" stroke-width="${marker.line?.width ?? 1.5}" stroke-linecap="round"${faint}/>`;
   const dots = `<path d="${path.d}" fill="none" stroke="${ink}" stroke-width="${px(path.size)}" stroke-linecap="round"${faint}/>`;
   // A round stroke end has no edge of its own: a wider one beneath it shows as the edge.
   if (edge === '') return dots;

@@ -8,6 +8,7 @@ interface SymbolShape {
 }
 
 const SYMBOLS: Readonly<Record<string, SymbolShape>> = {
+  'circle-open-dot': { stroked: true, outline: (r) => `${circle(r)}m${px(r)},0h0` },
   square: { outline: (r) => polygon([-0.89, -0.89, 0.89, -0.89, 0.89, 0.89, -0.89, 0.89], r) },
   diamond: { outline: (r) => polygon([0, -1.3, 1.3, 0, 0, 1.3, -1.3, 0], r) },
   'triangle-up': { outline: (r) => polygon([0, -1.25, 1.15, 0.75, -1.15, 0.75], r) },
@@ -59,21 +60,19 @@ export interface MarkerPath {
   readonly drawn: number;
 }
 
-/** Longest path of one trace, characters, so that a still picture of any number of stars stays small. */
-const PATH_BUDGET = 60_000;
-
 /**
  * All markers of a trace as one path. Circles are round ends of strokes of no length, which costs a few characters each.
  * Markers that fall on nearly the same place are drawn once; the places grow coarser until the path fits its budget.
  * @param xs px, shape (n); NaN is left out
  * @param ys px, shape (n)
+ * @param budget longest path, characters
  */
 export function markerPath(
   xs: Float64Array,
   ys: Float64Array,
   symbol: string,
   size: number,
-  budget: number = PATH_BUDGET,
+  budget: number,
 ): MarkerPath {
   const open = symbol.endsWith('-open');
   const name = open ? symbol.slice(0, -5) : symbol;

@@ -98,6 +98,8 @@ export interface ShapeSpec {
   readonly line?: LineSpec;
   readonly fillcolor?: string;
   readonly opacity?: number;
+  /** `below` the traces, or above them (default). */
+  readonly layer?: 'below' | 'above';
 }
 
 export interface AnnotationSpec {
