@@ -1,0 +1,126 @@
+import { KMS_PER_AU_PER_YEAR } from '../quantity/constants';
+import { checkOptions } from '../quantity/options';
+import type { RandomStream } from '../quantity/random';
+import type { ClusterModel } from './cluster-model';
+import { densityPeaks } from './density-peaks';
+import { type DispersionLimits, meanMotion } from './mean-motion';
+import { SPACE_LIMITS, spaceMotion } from './space-motion';
+import type { Stars } from './stars';
+import { commonVelocities } from './velocity-starts';
+
+/** A first idea of a cluster's motion. */
+export interface MotionGuess {
+  /** mas/yr (motion 'mean') */
+  properMotionRa?: number;
+  properMotionDec?: number;
+  /** km/s along equatorial axes (motion 'space-velocity') */
+  velocity?: readonly [number, number, number];
+  /** mas */
+  parallax?: number;
+}
+
+/** A place to start a fit from. */
+export interface ClusterStart {
+  readonly cluster: ClusterModel;
+  /** share of the stars that belong, 0 to 1 */
+  readonly share: number;
+}
+
+/** What of the settings the starts depend on. */
+export interface StartSettings {
+  readonly motion: 'mean' | 'space-velocity';
+  readonly guess: MotionGuess | undefined;
+  readonly dispersionLimit: number | undefined;
+  readonly starts: number;
+}
+
+/** Velocity dispersion that a cluster may show, binaries and all, km/s (common practice, no source). */
+const MOST_DISPERSION = 3;
+/** A cluster's own spread in parallax, as a share of its parallax, at most. */
+const MOST_DEPTH = 0.15;
+
+/** Where to start: the guess alone if there is one, else crowded places, and random ones to make up the number. */
+export function clusterStarts(stars: Stars, settings: StartSettings, stream: RandomStream): ClusterStart[] {
+  checkOptions('findMembers: guess', settings.guess, ['properMotionRa', 'properMotionDec', 'velocity', 'parallax']);
+  return settings.motion === 'mean' ? meanStarts(stars, settings, stream) : spaceStarts(stars, settings, stream);
+}
+
+function meanStarts(stars: Stars, settings: StartSettings, stream: RandomStream): ClusterStart[] {
+  const motion = Math.min(stars.spread[0], stars.spread[1]);
+  const limitsAt = (parallax: number): DispersionLimits => {
+    const physical = (MOST_DISPERSION * Math.max(0, parallax)) / KMS_PER_AU_PER_YEAR;
+    const usual = stars.useParallax ? Math.min(0.2 * motion, Math.max(0.03 * motion, physical)) : 0.1 * motion;
+    const mostMotion = settings.dispersionLimit ?? usual;
+    return {
+      leastMotion: 1e-3 * mostMotion,
+      mostMotion,
+      leastParallax: 1e-5 * stars.spread[2],
+      mostParallax: Math.max(0.1 * stars.spread[2], MOST_DEPTH * Math.abs(parallax)),
+    };
+  };
+  const start = (mean: readonly number[], width: number, depth: number, share: number): ClusterStart => {
+    const limits = limitsAt(mean[2]);
+    const w = Math.min(width, limits.mostMotion) ** 2;
+    const d = stars.useParallax ? Math.min(depth, limits.mostParallax) ** 2 : 0;
+    const mPlx = stars.useParallax ? mean[2] : 0;
+    const parameters = Float64Array.of(mean[0], mean[1], mPlx, w, 0, w, d);
+    return { cluster: meanMotion(parameters, limits, stars.useParallax), share };
+  };
+  const { guess } = settings;
+  if (guess !== undefined) {
+    const { properMotionRa, properMotionDec, parallax } = guess;
+    if (!Number.isFinite(properMotionRa) || !Number.isFinite(properMotionDec)) {
+      throw new TypeError(
+        "findMembers: with motion 'mean' the guess needs properMotionRa and properMotionDec, mas/yr.",
+      );
+    }
+    const plx = parallax ?? stars.centre[2];
+    const depth = parallax === undefined ? stars.spread[2] : 0.25 * stars.spread[2];
+    return [0.4, 1].map((f) =>
+      start([properMotionRa as number, properMotionDec as number, plx], 0.2 * f * motion, f * depth, 0.05),
+    );
+  }
+  const out = densityPeaks(stars, settings.starts).map((peak) =>
+    start(
+      peak.mean,
+      peak.motionWidth,
+      Math.max(peak.parallaxWidth, 1e-3 * stars.spread[2]),
+      Math.min(0.5, Math.max(2, peak.excess) / stars.count),
+    ),
+  );
+  while (out.length < settings.starts) {
+    const i = stream.below(stars.count);
+    const mean = [0, 1, 2].map((d) => stars.values[3 * i + d]);
+    out.push(start(mean, 0.1 * motion, 0.2 * stars.spread[2], 0.05));
+  }
+  return out;
+}
+
+function spaceStarts(stars: Stars, settings: StartSettings, stream: RandomStream): ClusterStart[] {
+  const limits = { ...SPACE_LIMITS, mostDispersion: settings.dispersionLimit ?? SPACE_LIMITS.mostDispersion };
+  const dispersion = Math.min(1, limits.mostDispersion / 2) ** 2;
+  const start = (v: readonly number[], parallax: number, depth: number, share: number): ClusterStart => ({
+    cluster: spaceMotion(
+      Float64Array.of(v[0], v[1], v[2], dispersion, parallax, Math.max(depth, 0.02 * parallax) ** 2),
+      limits,
+    ),
+    share,
+  });
+  const { guess } = settings;
+  if (guess !== undefined) {
+    const v = guess.velocity;
+    if (v === undefined || v.length !== 3 || !v.every(Number.isFinite)) {
+      throw new TypeError(
+        "findMembers: with motion 'space-velocity' the guess needs velocity: [x, y, z], km/s along equatorial axes.",
+      );
+    }
+    const plx = guess.parallax ?? stars.centre[2];
+    return [start(v, plx, 0.2 * Math.abs(plx), 0.05)];
+  }
+  const out = commonVelocities(stars, stream, settings.starts).map((c) =>
+    start(c.velocity, c.parallax, Math.min(c.parallaxSpread, 0.3 * c.parallax), Math.min(0.5, c.excess / stars.count)),
+  );
+  if (out.length === 0)
+    out.push(start([0, 0, 0], Math.max(stars.centre[2], 1e-3), 0.2 * Math.abs(stars.centre[2]), 0.02));
+  return out;
+}
