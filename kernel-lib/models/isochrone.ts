@@ -2,7 +2,7 @@ import { absoluteMagnitudes } from '../photometry/absolute-magnitudes';
 import { BAND_NAMES, type Band } from '../quantity/band';
 import { SOLAR_LOG_GRAVITY, SOLAR_TEMPERATURE } from '../quantity/constants';
 import { checkOptions, checkRange, describe } from '../quantity/options';
-import { traceCurve } from './curve';
+import { massSpans, traceCurve } from './curve';
 import { type Fits, fitsAt } from './fits';
 import { emptyIsochrone, finishIsochrone } from './isochrone-result';
 import { Life } from './life';
@@ -66,7 +66,8 @@ export function isochrone(options: IsochroneOptions): Isochrone {
     logTeff[i] = LOG_SOLAR_TEMPERATURE + 0.25 * (curve.logL[i] - 2 * curve.logR[i]);
     logGravity[i] = SOLAR_LOG_GRAVITY + Math.log10(curve.mass[i]) - 2 * curve.logR[i];
   }
-  const { initialMass, mass, logL, phase, weight, breaks } = curve;
+  const { parameter: initialMass, mass, logL, phase, breaks } = curve;
+  const weight = massSpans(initialMass, breaks);
   const magnitudes = absoluteMagnitudes({ logL, logTeff, logGravity, metallicity: setting.metallicity, bands });
   return finishIsochrone(
     setting,

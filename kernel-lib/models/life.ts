@@ -159,6 +159,7 @@ export function remnantState(phase: number, mass: number, z: number, age: number
   }
 }
 
+/** Cut to 0 to 1; a phase without length (0/0) counts as at its start. */
 function clampShare(x: number): number {
-  return x > 0 ? (x < 1 ? x : 1) : 0;
+  return x > 0 ? Math.min(1, x) : 0;
 }
