@@ -71,7 +71,9 @@ export function logTicks(low: number, high: number): number[] {
     const values: number[] = [];
     for (let e = first; e <= last; e++) for (const d of digits) values.push(Number(`${d}e${e}`));
     const inside = values.filter((v) => v >= low * (1 - 1e-9) && v <= high * (1 + 1e-9));
-    if (inside.length <= 9 || digits.length === 1) return inside;
+    const room = Math.log10(high / low) / 11;
+    const apart = inside.every((v, i) => i === 0 || Math.log10(v / inside[i - 1]) >= room);
+    if ((inside.length <= 9 && apart) || digits.length === 1) return inside;
   }
   return [];
 }

@@ -206,7 +206,7 @@ class CornerPanels {
 }
 
 function panelTicks(range: readonly [number, number]): Readonly<Record<string, unknown>> {
-  const tickvals = ticks(range[0], range[1], 3);
+  const tickvals = ticks(range[0], range[1], 3).map((v) => v + 0);
   return { tickmode: 'array', tickvals, ticktext: tickvals.map((v) => String(v).replace('-', '\u2212')) };
 }
 

@@ -10,12 +10,12 @@ export interface HrView {
   readonly bright: number;
 }
 
-/** Powers of ten, solar radii, whose lines cross a view. */
+/** Powers of ten from 0.01 (white dwarfs) to 1000 (supergiants) solar radii whose lines cross a view. */
 export function crossingRadii(view: HrView): number[] {
   const radii: number[] = [];
-  for (let e = -4; e <= 4; e++)
+  for (let e = -2; e <= 3; e++)
     if (luminosityAt(10 ** e, view.hot) > view.faint && luminosityAt(10 ** e, view.cool) < view.bright)
-      radii.push(10 ** e);
+      radii.push(Number(`1e${e}`));
   return radii;
 }
 

@@ -47,9 +47,11 @@ export class Figure {
 export function figureText(figure: Figure): string {
   const axes = Object.keys(figure.layout)
     .filter((key) => /^[xy]axis\d*$/.test(key))
+    .sort((a, b) => a.length - b.length || a.localeCompare(b))
     .map((key) => axisLine(key, figure.layout[key] as Record<string, unknown>))
     .filter((line) => line !== '');
-  const rows = figure.data.map((trace) => [
+  const drawn = figure.data.filter((trace) => trace.name !== undefined || pointCount(trace) > 0);
+  const rows = drawn.map((trace) => [
     plainText(String(trace.name ?? '(unnamed)')),
     String(trace.type).replace('scattergl', 'scatter'),
     pointCount(trace),

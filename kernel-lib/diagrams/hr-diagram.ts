@@ -13,7 +13,7 @@ import { plotText } from './plot-text';
 import { axisKeeper } from './points';
 import { finiteExtent, pick, significant } from './rounding';
 import { spectralAxis, spectralBoundaries } from './spectral-axis';
-import { GUIDE, markerSize, PALETTE, scatterType } from './theme';
+import { drawnAlike, GUIDE, markerSize, PALETTE, scatterType } from './theme';
 
 /** A curve on the HR diagram; an isochrone of the models is one. */
 export interface HrCurve {
@@ -116,16 +116,20 @@ export function hrDiagram(stars: Catalogue, options: HrDiagramOptions = {}): Fig
     shapes: classes ? spectralBoundaries(view) : [],
     annotations: lines.labels,
   };
-  return new Figure(data, layout, title);
+  return new Figure(drawnAlike(data), layout, title);
 }
 
-/** Room for all stars that have a place, and for the Sun: at least a factor 2 in temperature and 100 in luminosity. */
+/**
+ * Room for all stars that have a place, and for the Sun: at least a factor 2 in temperature and 100 in luminosity. Stars
+ * beyond 2000 to 120,000 K do not widen it.
+ */
 function viewOf(caller: string, stars: Catalogue, sun: boolean): HrView {
   const placed = (values: Float64Array, other: Float64Array) => values.filter((v, i) => Number.isFinite(v + other[i]));
   const t = stars.numbers(STAR_COLUMNS.logTeff);
   const l = stars.numbers(STAR_COLUMNS.logL);
+  const within = (logTeff: number) => logTeff > Math.log10(2000) && logTeff < Math.log10(120_000);
   const sunT = sun ? [Math.log10(SOLAR_TEMPERATURE)] : [];
-  const temperatures = finiteExtent(placed(t, l), sunT);
+  const temperatures = finiteExtent(placed(t, l).filter(within), sunT);
   const luminosities = finiteExtent(placed(l, t), sun ? [0] : []);
   if (finiteExtent(placed(t, l)) === null || temperatures === null || luminosities === null) {
     throw new Error(
@@ -195,7 +199,7 @@ function starTrace(
     marker: {
       color: look.color,
       symbol: look.symbol,
-      size: markerSize(stars.rowCount) + (look.symbol === 'circle' ? 0 : 1),
+      size: markerSize(n) + (look.symbol === 'circle' ? 0 : 1),
       opacity: 0.85,
       ...(look.symbol.endsWith('-open') ? { line: { width: 1.5, color: look.color } } : {}),
     },

@@ -4,7 +4,7 @@ import { curveTrace } from './curve';
 import { Figure, type FigureTrace } from './figure';
 import { plotText } from './plot-text';
 import { finiteExtent, significant } from './rounding';
-import { markerSize, PALETTE, scatterType, translucent } from './theme';
+import { drawnAlike, markerSize, PALETTE, scatterType, translucent } from './theme';
 
 /** Stars of known mass and luminosity. */
 export interface MassLuminosityStars {
@@ -85,7 +85,7 @@ export function massLuminosityDiagram(stars: MassLuminosityStars, options: MassL
     xaxis: logAxis('mass (M\u2609)', widened(stars.mass)),
     yaxis: logAxis('luminosity (L\u2609)', widened(stars.luminosity)),
   };
-  return new Figure(data, layout, title);
+  return new Figure(drawnAlike(data), layout, title);
 }
 
 function widened(values: ArrayLike<number>): [number, number] {

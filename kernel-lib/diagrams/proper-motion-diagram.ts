@@ -6,6 +6,7 @@ import { memberClasses } from './member-classes';
 import { plotText } from './plot-text';
 import { optionalNumbers, pointTrace } from './points';
 import { robustRange } from './robust-range';
+import { drawnAlike } from './theme';
 
 /** Options of `properMotionDiagram`. */
 export interface ProperMotionDiagramOptions {
@@ -50,7 +51,7 @@ export function properMotionDiagram(catalogue: Catalogue, options: ProperMotionD
     yaxis: linearAxis('\u03bc<sub>\u03b4</sub> (mas/yr)', yRange),
     shapes: centre ? [guideLine('x', centre.ra), guideLine('y', centre.dec)] : [],
   };
-  return new Figure(data, layout, title);
+  return new Figure(drawnAlike(data), layout, title);
 }
 
 function squareRanges(

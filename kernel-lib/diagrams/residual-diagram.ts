@@ -4,7 +4,7 @@ import { Figure, type FigureTrace } from './figure';
 import { plotText } from './plot-text';
 import { robustRange } from './robust-range';
 import { finiteExtent, rounded } from './rounding';
-import { markerSize, PALETTE, scatterType, translucent } from './theme';
+import { drawnAlike, markerSize, PALETTE, scatterType, translucent } from './theme';
 
 /** What `residualDiagram` draws. */
 export interface Residuals {
@@ -74,7 +74,7 @@ export function residualDiagram(residuals: Residuals, options: ResidualDiagramOp
     yaxis: linearAxis(plotText(residualTitle), [-1.1 * high, 1.1 * high]),
     shapes: [guideLine('y', 0, 'solid')],
   };
-  return new Figure(data, layout, title);
+  return new Figure(drawnAlike(data), layout, title);
 }
 
 interface Spread {

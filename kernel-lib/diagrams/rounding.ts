@@ -5,7 +5,8 @@
  */
 export function rounded(values: ArrayLike<number>, decimals: number): (number | null)[] {
   const scale = 10 ** decimals;
-  return Array.from(values, (v) => (Number.isFinite(v) ? Math.round(v * scale) / scale : null));
+  // Adding 0 makes -0, which JSON does not know, into 0.
+  return Array.from(values, (v) => (Number.isFinite(v) ? Math.round(v * scale) / scale + 0 : null));
 }
 
 /** As `rounded`, but with a number of significant digits: for values that span decades. */

@@ -8,6 +8,7 @@ import { memberClasses } from './member-classes';
 import { plotText } from './plot-text';
 import { pointTrace } from './points';
 import { finiteExtent } from './rounding';
+import { drawnAlike } from './theme';
 
 /** Options of `skyMap`. */
 export interface SkyMapOptions {
@@ -52,7 +53,7 @@ export function skyMap(catalogue: Catalogue, options: SkyMapOptions = {}): Figur
     }),
     yaxis: linearAxis('declination (\u00b0)', decRange),
   };
-  return new Figure(data, layout, title);
+  return new Figure(drawnAlike(data), layout, title);
 }
 
 /** Right ascensions of a field that lies across 0 h, moved below zero so that it holds together. */

@@ -35,6 +35,17 @@ export function scatterType(points: number): 'scatter' | 'scattergl' {
   return points > WEBGL_POINTS ? 'scattergl' : 'scatter';
 }
 
+/**
+ * Traces of one figure drawn by one means: Plotly lays WebGL over everything else, so where one trace needs it, all markers
+ * and lines use it, or marks would vanish beneath the stars.
+ */
+export function drawnAlike<T extends { readonly type: string; readonly [key: string]: unknown }>(
+  data: readonly T[],
+): T[] {
+  if (!data.some((trace) => trace.type === 'scattergl')) return [...data];
+  return data.map((trace) => (trace.type === 'scatter' ? { ...trace, type: 'scattergl' } : trace));
+}
+
 /** Marker size in px that suits a number of points: 7 for a few hundred, down to 3 for tens of thousands. */
 export function markerSize(points: number): number {
   if (points <= 300) return 7;

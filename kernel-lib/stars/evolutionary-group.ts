@@ -51,7 +51,7 @@ const NEAR_TURNOFF = { logTeff: 0.03, logL: 0.25 };
  * Least luminosity of supergiants: over cool giants, which reach 10^4 L on the asymptotic branch; at the Cepheids and
  * other yellow stars of class Ib; and over the hot giants. Convention of this library.
  */
-const SUPERGIANT_LINE: HrLine = { logTeff: [3.3, 3.6, 3.68, 3.9, 4.0, 4.7], logL: [4.2, 4.2, 3.2, 3.2, 3.9, 3.9] };
+const SUPERGIANT_LINE: HrLine = { logTeff: [3.3, 3.6, 3.7, 3.9, 4.0, 4.7], logL: [4.2, 4.2, 3, 3, 3.9, 3.9] };
 
 /**
  * The group of one star by its place on the HR diagram. Rules, a convention of this library, with the lines by Tout et al.
@@ -61,14 +61,14 @@ const SUPERGIANT_LINE: HrLine = { logTeff: [3.3, 3.6, 3.68, 3.9, 4.0, 4.7], logL
  *   zero-age line, where unresolved pairs lie); hotter than 27,900 K everything above counts, since there the end of the
  *   main sequence turns back;
  * - turnoff: main sequence within 0.03 dex in temperature and 0.25 dex in luminosity of the turnoff point, if given;
- * - supergiants: past the main sequence and above 10^3.2 (yellow) to 10^4.2 (red) solar luminosities;
+ * - supergiants: past the main sequence and above 10^3 (yellow) to 10^4.2 (red) solar luminosities;
  * - subgiants: past the main sequence and hotter than the giant branch: 4840 K below 10 L, rising to 5500 K above 25 L, so
  *   that stars crossing to the giant branch are counted here whatever their luminosity class;
  * - giants: the rest of those past the main sequence;
  * - other: below the main sequence, or above it but too faint to have left it (stars not yet on it, bad photometry).
  * @param logTeff log10 of effective temperature in K
  * @param logL    log10 of luminosity in solar units
- * @returns the group; null when a value is missing or the temperature lies outside the zero-age line (3100-44,500 K) and the
+ * @returns the group; null when a value is missing or the temperature lies outside the zero-age line (2800-44,500 K) and the
  *   star is neither a white dwarf nor a cool giant
  * @throws TypeError for an unknown option
  * @example evolutionaryGroup(Math.log10(5772), 0) // => 'main sequence'

@@ -1,6 +1,6 @@
 import { extent } from 'd3-array';
 import { scaleLinear, scaleLog } from 'd3-scale';
-import type { AxisSpec, LayoutSpec, TraceSpec } from './plotly-subset';
+import type { AxisSpec, TraceSpec } from './plotly-subset';
 
 /** The rectangle that axes fill, px. */
 export interface Area {
@@ -40,7 +40,7 @@ export interface PlacedAxis extends AxisPlan {
 }
 
 /** Every axis of a figure with range and ticks. */
-export function planAxes(data: readonly TraceSpec[], layout: LayoutSpec): Map<string, AxisPlan> {
+export function planAxes(data: readonly TraceSpec[], layout: object): Map<string, AxisPlan> {
   const specs = new Map<string, AxisSpec>([
     ['x', {}],
     ['y', {}],
