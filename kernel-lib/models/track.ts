@@ -6,7 +6,7 @@ import { Life } from './life';
 import { type Composition, metallicityOf, whyNotMass, whyNotZ, zOf } from './metallicity';
 import { type LifeSource, MOMENT_COUNT } from './moments';
 import { followPath, type PathSource, Pieces } from './path';
-import { PHASE, PHASE_NAMES, type StarState } from './phases/phase';
+import { PHASE_NAMES, type StarState } from './phases/phase';
 import { columnsPresentation } from './show';
 
 /** One star's life from zero age to the end of its last shining phase. Columns of `count` entries, in order of age. */
