@@ -1,6 +1,6 @@
 import type { Fits } from './fits';
 import { MASS_RANGE } from './metallicity';
-import { type LifeSource, MOMENT_COUNT, type MomentTable, massesAtMoment } from './moments';
+import { type LifeSource, type MomentTable, massesAtMoment } from './moments';
 import { followPath, MOST_PIECES, type PathPoints, type PathSource, Pieces } from './path';
 import { PHASE, type StarState } from './phases/phase';
 
@@ -46,7 +46,7 @@ function cutIntoPieces(fits: Fits, source: LifeSource, table: MomentTable, time:
   const lnTime = Math.log(time);
   let count = 0;
   cuts[count++] = MASS_RANGE[0];
-  for (let k = 0; k < MOMENT_COUNT; k++) {
+  for (let k = 0; k < source.momentCount; k++) {
     const from = count;
     count = Math.min(MOST_PIECES - 3, massesAtMoment(source, table, k, lnTime, cuts, count));
     // Stars without a hook have no kink there.

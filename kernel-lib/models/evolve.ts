@@ -2,10 +2,11 @@ import { SOLAR_LOG_GRAVITY, SOLAR_TEMPERATURE } from '../quantity/constants';
 import { checkOptions, describe } from '../quantity/options';
 import { presentable } from '../quantity/present';
 import { fitsAt } from './fits';
-import { Life } from './life';
 import { type Composition, type Masses, massArray, metallicityOf, whyNotMass, whyNotZ, zOf } from './metallicity';
 import { PHASE_NAMES, StarState } from './phases/phase';
 import { columnsPresentation, numbersPresentation } from './show';
+import { lifeUnder, type MassLoss, massLossWords, windsOf } from './winds/mass-loss';
+import type { WindOptions } from './winds/wind-rate';
 
 /** What a star is like at an age. */
 export interface EvolvedStar {
@@ -53,6 +54,16 @@ export interface EvolvedStars {
   readonly note: string;
 }
 
+/** What evolve takes. */
+export interface EvolveOptions extends Composition {
+  /** Initial mass, solar masses: one or many. */
+  readonly mass: Masses;
+  /** Gyr since the zero-age main sequence. */
+  readonly age: number;
+  /** Mass loss, default 'none'. */
+  readonly massLoss?: MassLoss;
+}
+
 /** Number that stands for no phase in columns. */
 export const NO_PHASE = 255;
 
@@ -60,7 +71,7 @@ export const NO_PHASE = 255;
  * A star, or many stars of one composition, at an age: luminosity, radius, temperature, core and phase.
  * @param options mass: initial mass in solar masses, a number or an array of shape (n), range 0.1 to 100; age: Gyr since the
  *   zero-age main sequence, 0 or more; metallicity: [Fe/H], dex (default 0, which is Z = 0.0188), or z: mass fraction,
- *   range 0.0001 to 0.03
+ *   range 0.0001 to 0.03; massLoss: 'none' (default), 'winds' or { reimers: efficiency of Reimers' law, the paper's is 0.5 }
  * @returns numbers for one mass, columns of shape (n) for an array; NaN outside the range, `note` says why
  * @throws TypeError on an unknown option or a value that is no number
  * @example evolve({ mass: 1, age: 4.57 }).temperature // => 5790.6
@@ -68,15 +79,14 @@ export const NO_PHASE = 255;
  * by Hurley & Shara 2003, ApJ 589, 179. Without winds the asymptotic branch ends at the observed white-dwarf mass of
  * Cummings et al. 2018, ApJ 866, 21: our choice in place of the paper's winds.
  */
-export function evolve(options: Composition & { readonly mass: number; readonly age: number }): EvolvedStar;
-export function evolve(options: Composition & { readonly mass: ArrayLike<number>; readonly age: number }): EvolvedStars;
-export function evolve(
-  options: Composition & { readonly mass: Masses; readonly age: number },
-): EvolvedStar | EvolvedStars {
-  checkOptions('evolve', options, ['mass', 'age', 'metallicity', 'z']);
+export function evolve(options: EvolveOptions & { readonly mass: number }): EvolvedStar;
+export function evolve(options: EvolveOptions & { readonly mass: ArrayLike<number> }): EvolvedStars;
+export function evolve(options: EvolveOptions): EvolvedStar | EvolvedStars {
+  checkOptions('evolve', options, ['mass', 'age', 'metallicity', 'z', 'massLoss']);
   const masses = massArray('evolve', 'mass', options.mass);
   const { age } = options;
   if (typeof age !== 'number') throw new TypeError(`evolve: age must be a number (Gyr), got ${describe(age)}.`);
+  const wind = windsOf('evolve', options.massLoss ?? 'none');
   const z = zOf('evolve', options);
   const n = masses.length;
   const column = () => new Float64Array(n).fill(Number.NaN);
@@ -93,10 +103,10 @@ export function evolve(
     age,
     metallicity: metallicityOf(z),
     z,
-    massLoss: 'none',
+    massLoss: massLossWords(wind),
     note: whyNotZ(z) || (age >= 0 && Number.isFinite(age) ? '' : `age ${age} Gyr is not 0 or more`),
   };
-  if (stars.note === '') stars.note = fill(stars, age * 1000);
+  if (stars.note === '') stars.note = fill(stars, age * 1000, wind);
   if (typeof options.mass !== 'number') return presentable(stars, columnsPresentation('Evolved stars', stars));
   const { phase, phaseNames, ...rest } = stars;
   const one = Object.fromEntries(
@@ -110,8 +120,8 @@ type Columns = {
   -readonly [K in keyof EvolvedStars]: EvolvedStars[K];
 };
 
-function fill(stars: Columns, time: number): string {
-  const life = new Life(fitsAt(stars.z));
+function fill(stars: Columns, time: number, wind: WindOptions | null): string {
+  const life = lifeUnder(fitsAt(stars.z), wind);
   const state = new StarState();
   let note = '';
   for (let i = 0; i < stars.initialMass.length; i++) {
@@ -121,7 +131,7 @@ function fill(stars: Columns, time: number): string {
       continue;
     }
     life.setMass(stars.initialMass[i]);
-    life.state(time, state);
+    life.stateIn(life.phaseAt(time), time, state);
     stars.phase[i] = state.phase;
     stars.mass[i] = state.mass;
     stars.luminosity[i] = state.luminosity;

@@ -3,12 +3,11 @@ import { BAND_NAMES, type Band } from '../quantity/band';
 import { SOLAR_LOG_GRAVITY, SOLAR_TEMPERATURE } from '../quantity/constants';
 import { checkOptions, checkRange, describe } from '../quantity/options';
 import { massSpans, traceCurve } from './curve';
-import { type Fits, fitsAt } from './fits';
+import { fitsAt } from './fits';
 import { emptyIsochrone, finishIsochrone } from './isochrone-result';
-import { Life } from './life';
 import { metallicityOf, whyNotZ, zOf } from './metallicity';
-import { type MomentTable, makeMomentTable } from './moments';
 import type { Isochrone, IsochroneOptions } from './stellar-model';
+import { type MassLoss, massLossWords, prepare, windsOf } from './winds/mass-loss';
 
 /** Name of the built-in model in results. */
 export const ANALYTIC_NAME = 'Hurley, Pols & Tout 2000';
@@ -21,16 +20,10 @@ export const DEFAULT_BANDS: readonly Band[] = Object.freeze(['G', 'BP', 'RP'] as
 
 const POINTS = 400;
 const LOG_SOLAR_TEMPERATURE = Math.log10(SOLAR_TEMPERATURE);
-const tables = new WeakMap<Fits, { readonly life: Life; readonly table: MomentTable }>();
-
-function tableOf(fits: Fits): { readonly life: Life; readonly table: MomentTable } {
-  let known = tables.get(fits);
-  if (known === undefined) {
-    const life = new Life(fits);
-    known = { life, table: makeMomentTable(fits, life) };
-    tables.set(fits, known);
-  }
-  return known;
+/** What to ask of the built-in model. */
+export interface AnalyticIsochroneOptions extends IsochroneOptions {
+  /** Mass loss, default 'none'. */
+  readonly massLoss?: MassLoss;
 }
 
 /**
@@ -38,26 +31,34 @@ function tableOf(fits: Fits): { readonly life: Life; readonly table: MomentTable
  * at equal steps along the curve in the HR diagram, so that points crowd where the curve bends and not where mass does.
  * @param options logAge: log10 of the age in years, 6 to 10.3; metallicity: [Fe/H], dex (default 0, which is Z = 0.0188), or
  *   z: mass fraction, range 0.0001 to 0.03; bands: in which to give absolute magnitudes (default G, BP, RP); points: 60 to
- *   5000 (default 400)
+ *   5000 (default 400); massLoss: 'none' (default), 'winds' or { reimers } (winds follow every star step by step: a second or so)
  * @returns columns of `points` entries, frozen; count 0 and a note outside the ranges
  * @throws TypeError on an unknown option or band, or a logAge that is no number; RangeError on points out of range
  * @example isochrone({ logAge: 9, metallicity: 0.1, bands: ['B', 'V'] }).magnitudes.V
  * Source: Hurley, Pols & Tout 2000, MNRAS 315, 543 (see evolve). Stars still contracting onto the main sequence are not in it.
  */
-export function isochrone(options: IsochroneOptions): Isochrone {
-  checkOptions('isochrone', options, ['logAge', 'metallicity', 'z', 'bands', 'points']);
-  const { logAge, bands = DEFAULT_BANDS, points = POINTS } = options;
+export function isochrone(options: AnalyticIsochroneOptions): Isochrone {
+  checkOptions('isochrone', options, ['logAge', 'metallicity', 'z', 'bands', 'points', 'massLoss']);
+  const { logAge, bands = DEFAULT_BANDS, points = POINTS, massLoss = 'none' } = options;
   if (typeof logAge !== 'number') {
     throw new TypeError(`isochrone: logAge must be a number (log10 of years), got ${describe(logAge)}.`);
   }
   checkBands('isochrone', bands, BAND_NAMES);
   checkRange('isochrone', 'points', points, 60, 5000);
+  const wind = windsOf('isochrone', massLoss);
   const z = zOf('isochrone', options);
-  const setting = { model: ANALYTIC_NAME, logAge, metallicity: metallicityOf(z), z, bands, massLoss: 'none' };
+  const setting = {
+    model: ANALYTIC_NAME,
+    logAge,
+    metallicity: metallicityOf(z),
+    z,
+    bands,
+    massLoss: massLossWords(wind),
+  };
   const why = whyNotZ(z) || whyNotAge(logAge, LOG_AGE_RANGE);
   if (why !== '') return emptyIsochrone(setting, why);
   const fits = fitsAt(z);
-  const { life, table } = tableOf(fits);
+  const { life, table } = prepare(fits, wind);
   const curve = traceCurve(fits, life, table, 10 ** (logAge - 6), Math.round(points));
   const n = curve.logL.length;
   const logTeff = new Float64Array(n);

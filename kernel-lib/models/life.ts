@@ -1,6 +1,6 @@
 import type { Fits } from './fits';
 import type { LifeSource } from './moments';
-import { Giant, heliumBurningLuminosity, heliumBurningRadius, setGiant } from './phases/giant';
+import { Giant, heliumBurningLuminosity, heliumBurningRadius, setCurrentMass, setGiant } from './phases/giant';
 import { asymptoticRadius, giantRadius } from './phases/giant-fits';
 import {
   HOOK_WIDTH,
@@ -16,16 +16,12 @@ import { coolingLuminosity, coreBaryons, NEUTRON_STAR_RADIUS, whiteDwarfRadiusLa
 export class Life implements LifeSource {
   readonly main: MainSequence = new MainSequence();
   readonly giant: Giant = new Giant();
-  private fits: Fits;
+  readonly momentCount = 8;
+  private readonly fits: Fits;
   private shaped = false;
   private evolved = false;
 
   constructor(fits: Fits) {
-    this.fits = fits;
-  }
-
-  /** Chooses the metallicity. */
-  useFits(fits: Fits): void {
     this.fits = fits;
   }
 
@@ -62,6 +58,12 @@ export class Life implements LifeSource {
     if (k === 5) return this.giant.timeEnding;
     if (k === 6) return this.giant.timeDredge;
     return this.giant.timeEnd;
+  }
+
+  /** Sets the later radii for a current mass that winds have made smaller than the one that was set. */
+  setCurrentMass(mass: number): void {
+    this.evolveOn();
+    setCurrentMass(this.fits, this.giant, mass);
   }
 
   /** Phase at a time in Myr. */

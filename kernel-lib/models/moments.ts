@@ -2,13 +2,12 @@ import type { Fits } from './fits';
 import { MASS_RANGE } from './metallicity';
 import type { StarState } from './phases/phase';
 
-/** Number of moments that cut a life into pieces: two kinks of the hook, then the ends of the six phases. */
-export const MOMENT_COUNT = 8;
-
 /** A star whose mass can be set and that then answers for every moment of its life. Times in Myr. */
 export interface LifeSource {
+  /** Number of moments that cut a life into pieces. */
+  readonly momentCount: number;
   setMass(mass: number): void;
-  /** See Life.moment. */
+  /** Time of a moment: two kinks of the hook, then the ends of the phases; see Life.moment and WindLife. */
   moment(k: number): number;
   phaseAt(time: number): number;
   stateIn(phase: number, time: number, out: StarState): void;
@@ -39,10 +38,10 @@ export function makeMomentTable(fits: Fits, source: LifeSource, count = 200): Mo
   masses.add(high);
   const mass = Float64Array.from(masses).filter((m) => m >= low && m <= high);
   mass.sort();
-  const lnTime = Array.from({ length: MOMENT_COUNT }, () => new Float64Array(mass.length));
+  const lnTime = Array.from({ length: source.momentCount }, () => new Float64Array(mass.length));
   for (let j = 0; j < mass.length; j++) {
     source.setMass(mass[j]);
-    for (let k = 0; k < MOMENT_COUNT; k++) lnTime[k][j] = Math.log(source.moment(k));
+    for (let k = 0; k < source.momentCount; k++) lnTime[k][j] = Math.log(source.moment(k));
   }
   return {
     mass,

@@ -4,10 +4,12 @@ import { presentable } from '../quantity/present';
 import { fitsAt } from './fits';
 import { Life } from './life';
 import { type Composition, metallicityOf, whyNotMass, whyNotZ, zOf } from './metallicity';
-import { type LifeSource, MOMENT_COUNT } from './moments';
+import type { LifeSource } from './moments';
 import { followPath, type PathSource, Pieces } from './path';
 import { PHASE_NAMES, type StarState } from './phases/phase';
 import { columnsPresentation } from './show';
+import { lifeUnder, type MassLoss, massLossWords, windsOf } from './winds/mass-loss';
+import type { WindLife } from './winds/wind-life';
 
 /** One star's life from zero age to the end of its last shining phase. Columns of `count` entries, in order of age. */
 export interface Track {
@@ -37,6 +39,16 @@ export interface Track {
   readonly note: string;
 }
 
+/** What track takes. */
+export interface TrackOptions extends Composition {
+  /** Initial mass, solar masses. */
+  readonly mass: number;
+  /** Number of points, default 400. */
+  readonly points?: number;
+  /** Mass loss, default 'none'. */
+  readonly massLoss?: MassLoss;
+}
+
 class OneStar implements PathSource {
   private readonly source: LifeSource;
   constructor(source: LifeSource) {
@@ -50,38 +62,48 @@ class OneStar implements PathSource {
 /**
  * The track of one star in the HR diagram, at equal steps along the curve.
  * @param options mass: initial mass in solar masses, range 0.1 to 100; metallicity: [Fe/H], dex (default 0, which is
- *   Z = 0.0188), or z: mass fraction, range 0.0001 to 0.03; points: 60 to 5000 (default 400)
+ *   Z = 0.0188), or z: mass fraction, range 0.0001 to 0.03; points: 60 to 5000 (default 400); massLoss: 'none' (default),
+ *   'winds' or { reimers: efficiency }
  * @returns columns, frozen; count 0 and a note outside the range
  * @throws TypeError on an unknown option or a mass that is no number; RangeError on points out of range
  * @example track({ mass: 5 }).logTeff
  * Source: Hurley, Pols & Tout 2000, MNRAS 315, 543 (see evolve).
  */
-export function track(options: Composition & { readonly mass: number; readonly points?: number }): Track {
-  checkOptions('track', options, ['mass', 'metallicity', 'z', 'points']);
+export function track(options: TrackOptions): Track {
+  checkOptions('track', options, ['mass', 'metallicity', 'z', 'points', 'massLoss']);
   const { mass, points = 400 } = options;
   if (typeof mass !== 'number')
     throw new TypeError(`track: mass must be one number (solar masses), got ${describe(mass)}.`);
   checkRange('track', 'points', points, 60, 5000);
   const z = zOf('track', options);
+  const wind = windsOf('track', options.massLoss ?? 'none');
   const note = whyNotZ(z) || whyNotMass(mass);
-  if (note !== '') return finish(mass, z, null, note, 0);
-  const life = new Life(fitsAt(z));
+  if (note !== '') return finish(mass, z, null, note, 0, massLossWords(wind));
+  const life = lifeUnder(fitsAt(z), wind);
   life.setMass(mass);
-  return finish(mass, z, life, '', Math.round(points));
+  return finish(mass, z, life, '', Math.round(points), massLossWords(wind));
 }
 
-function finish(initialMass: number, z: number, life: Life | null, note: string, points: number): Track {
+function finish(
+  initialMass: number,
+  z: number,
+  life: Life | WindLife | null,
+  note: string,
+  points: number,
+  massLoss: string,
+): Track {
   const pieces = new Pieces();
-  let from = 0;
   if (life !== null) {
-    for (let k = 0; k < MOMENT_COUNT; k++) {
-      const to = life.moment(k);
-      const kink = k < 2 && life.main.deltaL === 0 && life.main.deltaR === 0;
-      if (kink || to <= from) continue;
+    const hookless = initialMass <= fitsAt(z).massHook;
+    const moments = Array.from({ length: life.momentCount }, (_, k) => life.moment(k));
+    const cuts = Float64Array.from(moments.filter((t, k) => Number.isFinite(t) && !(hookless && k < 2))).sort();
+    let from = 0;
+    for (const to of cuts) {
       pieces.add(from, to, life.phaseAt(0.5 * (from + to)));
-      from = to;
+      from = Math.max(from, to);
     }
   }
+  const left = life instanceof Life ? life.giant : life;
   const path = life === null ? EMPTY : followPath(new OneStar(life), pieces, points);
   const { parameter, mass, coreMass, logL, logR, phase, breaks } = path;
   const solar = Math.log10(SOLAR_TEMPERATURE);
@@ -100,9 +122,9 @@ function finish(initialMass: number, z: number, life: Life | null, note: string,
     phase,
     phaseNames: PHASE_NAMES,
     breaks,
-    remnant: life === null ? '' : PHASE_NAMES[life.giant.remnant],
-    finalMass: life === null ? Number.NaN : life.giant.remnantMass,
-    massLoss: 'none',
+    remnant: left === null ? '' : PHASE_NAMES[left.remnant],
+    finalMass: left === null ? Number.NaN : left.remnantMass,
+    massLoss,
     note,
   };
   return presentable(track, columnsPresentation('Track', track));

@@ -37,6 +37,8 @@ export class Giant {
   early = false;
   /** False for stars whose whole mass becomes core before helium can ignite. */
   ignites = true;
+  /** True when winds end the asymptotic branch and not the observed final masses. */
+  windy = false;
   /** Times, Myr: start of helium burning, its end, second dredge-up (end of the early branch), end of the branch. */
   timeIgnition: number = Number.NaN;
   timeEnding: number = Number.NaN;
@@ -139,60 +141,84 @@ function endWithoutIgnition(b: Float64Array, s: MainSequence, g: Giant): void {
 function setHeliumBurning(f: Fits, s: MainSequence, g: Giant): void {
   const { mass, lnMass } = s;
   const { b, giants } = f;
+  g.tauX = 0;
+  g.tauY = 1;
+  g.luminosityGapEnd = g.luminosityBase;
   if (g.flash) {
     const mu = (mass - g.coreIgnition) / (f.massFlash - g.coreIgnition);
     g.luminosityX = horizontalLuminosity(f, giants, mass, g.coreIgnition, mu);
+    g.duration =
+      (b[39] + (heliumLifetime(g.coreIgnition) - b[39]) * (1 - mu) ** b[40]) *
+      (1 + giants.duration * Math.exp(15 * (mass - f.massFlash)));
+  } else {
+    g.duration = s.timeBase * heliumBurningShare(b, mass, lnMass);
+    const lnRatio = lnMass - giants.lnMassGiantBranch;
+    if (g.early) {
+      const asymptotic = asymptoticRadius(b, g.asymptoticFactor, g.asymptoticExponent, g.luminosityIgnition);
+      const fitted = blueRadiusHigh(b, mass, lnMass);
+      const spread = giants.blueF > 0 ? blueFraction(b, lnMass, fitted, asymptotic) / giants.blueF : 0;
+      g.tauY = Math.max(0, Math.min(1, (1 - b[47]) * spread));
+      g.luminosityX = g.luminosityIgnition;
+      g.luminosityGapEnd = g.luminosityIgnition;
+    } else {
+      const power = lnRatio / (Math.log(f.massFlash) - giants.lnMassGiantBranch);
+      const blue = b[45] * Math.exp(0.414 * lnRatio) + giants.blueAlpha * Math.max(0, power) ** b[46];
+      g.tauX = 1 - Math.max(0, Math.min(1, blue));
+      g.luminosityX = leastLuminosity(f, giants, lnMass, g.luminosityIgnition);
+    }
+  }
+  g.timeEnding = g.timeIgnition + g.duration;
+  g.lnLX = Math.log(g.luminosityX);
+  g.lnRiseL = Math.log(g.luminosityEnding) - g.lnLX;
+  g.lnFallL = Math.log(g.luminosityIgnition) - g.lnLX;
+  setCharacteristicRadii(f, g, mass, lnMass);
+  g.xi = Math.min(2.5, Math.max(0.4, g.radiusBlue / g.radiusX));
+  setBluePhase(b, g);
+}
+
+/** Radii at the ends of the gap and of the blue phase, for a current mass whose two factors are set. Eqs 50, 54, 55. */
+function setCharacteristicRadii(f: Fits, g: Giant, mass: number, lnMass: number): void {
+  const { b, giants } = f;
+  if (g.flash) {
+    const mu = Math.max(0, (mass - g.coreIgnition) / (f.massFlash - g.coreIgnition));
     const giant = giantRadius(b, g.giantFactor, g.luminosityX);
     const share = horizontalShare(b, mu);
     g.radiusX = (1 - share) * heliumRadius(g.coreIgnition) + share * giant;
     g.radiusBlue = giant * Math.exp((giants.lnBlueRatio * mass) / f.massFlash);
-    g.duration =
-      (b[39] + (heliumLifetime(g.coreIgnition) - b[39]) * (1 - mu) ** b[40]) *
-      (1 + giants.duration * Math.exp(15 * (mass - f.massFlash)));
-    g.tauX = 0;
-    g.tauY = 1;
-    g.luminosityGapEnd = g.luminosityBase;
     g.radiusGapEnd = giantRadius(b, g.giantFactor, g.luminosityBase);
-  } else {
-    g.duration = s.timeBase * heliumBurningShare(b, mass, lnMass);
-    const fitted = blueRadiusHigh(b, mass, lnMass);
-    const asymptotic = asymptoticRadius(b, g.asymptoticFactor, g.asymptoticExponent, g.luminosityIgnition);
-    g.radiusBlue = fitted;
-    if (g.early) {
-      // The fit of the blue radius passes the asymptotic giants' at high mass; the blue phase then has no length.
-      const blue = Math.min(fitted, asymptotic);
-      const spread = giants.blueF > 0 ? blueFraction(b, lnMass, fitted, asymptotic) / giants.blueF : 0;
-      g.tauX = 0;
-      g.tauY = Math.max(0, Math.min(1, (1 - b[47]) * spread));
-      g.luminosityX = g.luminosityIgnition;
-      g.radiusBlue = blue;
-      if (g.tauY === 0) g.radiusX = asymptotic;
-      else if (mass >= 12) g.radiusX = blue;
-      else {
-        const giant = giantRadius(b, g.giantFactor, g.luminosityIgnition);
-        const power = (lnMass - giants.lnMassGiantBranch) / (Math.log(12) - giants.lnMassGiantBranch);
-        g.radiusX = giant * (blue / giant) ** power;
-      }
-      g.luminosityGapEnd = g.luminosityIgnition;
-      g.radiusGapEnd = g.radiusX;
-    } else {
-      const lnRatio = lnMass - giants.lnMassGiantBranch;
-      const power = lnRatio / (Math.log(f.massFlash) - giants.lnMassGiantBranch);
-      const blue = b[45] * Math.exp(0.414 * lnRatio) + giants.blueAlpha * Math.max(0, power) ** b[46];
-      g.tauX = 1 - Math.max(0, Math.min(1, blue));
-      g.tauY = 1;
-      g.luminosityX = leastLuminosity(f, giants, lnMass, g.luminosityIgnition);
-      g.radiusX = giantRadius(b, g.giantFactor, g.luminosityX);
-      g.luminosityGapEnd = g.luminosityBase;
-      g.radiusGapEnd = giantRadius(b, g.giantFactor, g.luminosityBase);
-    }
+    return;
   }
-  g.timeEnding = g.timeIgnition + g.duration;
-  g.xi = Math.min(2.5, Math.max(0.4, g.radiusBlue / g.radiusX));
-  g.lnLX = Math.log(g.luminosityX);
-  g.lnRiseL = Math.log(g.luminosityEnding) - g.lnLX;
-  g.lnFallL = Math.log(g.luminosityIgnition) - g.lnLX;
-  setBluePhase(b, g);
+  g.radiusBlue = blueRadiusHigh(b, mass, lnMass);
+  if (!g.early) {
+    g.radiusX = giantRadius(b, g.giantFactor, g.luminosityX);
+    g.radiusGapEnd = giantRadius(b, g.giantFactor, g.luminosityBase);
+    return;
+  }
+  // The fit of the blue radius passes the asymptotic giants' at high mass; the blue phase then has no length.
+  const asymptotic = asymptoticRadius(b, g.asymptoticFactor, g.asymptoticExponent, g.luminosityIgnition);
+  g.radiusBlue = Math.min(g.radiusBlue, asymptotic);
+  if (g.tauY === 0) g.radiusX = asymptotic;
+  else if (mass >= Math.max(12, f.massGiantBranch)) g.radiusX = g.radiusBlue;
+  else {
+    const giant = giantRadius(b, g.giantFactor, g.luminosityIgnition);
+    const power = (lnMass - giants.lnMassGiantBranch) / (Math.log(12) - giants.lnMassGiantBranch);
+    g.radiusX = giant * (g.radiusBlue / giant) ** Math.max(0, Math.min(1, power));
+  }
+  g.radiusGapEnd = g.radiusX;
+}
+
+/** Fits the radii of a star to a current mass that differs from the one that set its luminosity and core. */
+export function setCurrentMass(f: Fits, g: Giant, mass: number): void {
+  const lnMass = Math.log(mass);
+  g.giantFactor = giantFactor(f.b, lnMass);
+  g.asymptoticFactor = asymptoticFactor(f, mass, lnMass);
+  g.asymptoticExponent = asymptoticExponent(f, mass);
+  if (!g.ignites) {
+    g.radiusGapEnd = giantRadius(f.b, g.giantFactor, g.luminosityBase);
+    return;
+  }
+  setCharacteristicRadii(f, g, mass, lnMass);
+  setBluePhase(f.b, g);
 }
 
 /** Constants of the radius of the blue phase (Eqs 62-65). */
@@ -239,7 +265,9 @@ function setAsymptotic(s: MainSequence, g: Giant, rate: number): void {
   }
   const dredge = g.coreEnding > 0.8 ? 0.44 * g.coreEnding + 0.448 : g.coreEnding;
   g.coreDredge = Math.min(dredge, mass);
-  g.coreEnd = Math.min(Math.max(g.coreDredge, extendedFinalMass(mass)), g.coreSupernova, mass);
+  // With winds the star ends when its envelope is gone, which is followed step by step; the core may grow until it explodes.
+  const last = g.windy ? Number.POSITIVE_INFINITY : Math.max(g.coreDredge, extendedFinalMass(mass));
+  g.coreEnd = Math.min(last, g.coreSupernova, g.windy ? last : mass);
   const luminosityDredge = g.earlyClock.luminosityAtCore(Math.min(g.coreDredge, g.coreEnd));
   g.timeDredge = Math.max(g.timeEnding, g.earlyClock.timeAtLuminosity(luminosityDredge));
   g.lambda = Math.min(0.9, 0.3 + 0.001 * mass ** 5);
@@ -249,10 +277,10 @@ function setAsymptotic(s: MainSequence, g: Giant, rate: number): void {
     Math.max(luminosityDredge, g.luminosityEnding),
     g.timeDredge,
   );
-  const last = g.coreDredge + (g.coreEnd - g.coreDredge) / (1 - g.lambda);
+  const clocked = g.coreDredge + (g.coreEnd - g.coreDredge) / (1 - g.lambda);
   g.timeEnd =
     g.coreEnd > g.coreDredge
-      ? Math.max(g.timeDredge, g.pulsingClock.timeAtLuminosity(g.pulsingClock.luminosityAtCore(last)))
+      ? Math.max(g.timeDredge, g.pulsingClock.timeAtLuminosity(g.pulsingClock.luminosityAtCore(clocked)))
       : g.timeDredge;
   g.remnantMass = g.coreEnd;
   g.remnant = g.coreEnding < 1.6 ? PHASE.carbonWhiteDwarf : PHASE.neonWhiteDwarf;
