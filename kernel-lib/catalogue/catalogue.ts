@@ -17,6 +17,8 @@ export interface CatalogueParts {
   readonly history?: readonly HistoryStep[];
   /** Things a reader should be told about the data, one sentence each. */
   readonly warnings?: readonly string[];
+  /** Keywords of the whole table, as the file gave them. */
+  readonly meta?: Readonly<Record<string, unknown>>;
 }
 
 /**
@@ -33,6 +35,8 @@ export class Catalogue {
   readonly history: readonly HistoryStep[];
   /** What a reader should be told about the data. */
   readonly warnings: readonly string[];
+  /** Keywords of the whole table, as the file gave them. */
+  readonly meta: Readonly<Record<string, unknown>>;
   readonly #values: ReadonlyMap<string, ColumnValues>;
   readonly #cache: { table?: ColumnTable } = {};
 
@@ -67,6 +71,7 @@ export class Catalogue {
     this.roles = Object.freeze({ ...parts.roles });
     this.history = Object.freeze([...(parts.history ?? [])]);
     this.warnings = Object.freeze([...(parts.warnings ?? [])]);
+    this.meta = Object.freeze({ ...parts.meta });
     this.#values = values;
     attachPresentation(this, presentCatalogue(this));
     Object.freeze(this);
@@ -208,6 +213,7 @@ export class Catalogue {
       columns: [],
       roles: this.roles,
       warnings: this.warnings,
+      meta: this.meta,
       ...parts,
     });
   }

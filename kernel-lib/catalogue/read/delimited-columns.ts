@@ -1,0 +1,199 @@
+import type { ColumnValues } from '../columns';
+import {
+  lineOf,
+  type RecordCell,
+  type ScanKind,
+  type ScanLayout,
+  type ScannedColumn,
+  scanDelimited,
+  splitRecord,
+} from './delimited-scan';
+import { MISSING_NUMBERS } from './missing-words';
+import { isNumberText, isTooLongInteger } from './parse-number';
+import type { ReadRequest } from './raw-table';
+
+/** What the file declares about a column's type; 'any' where it says nothing. */
+export type DeclaredKind = 'any' | 'number' | 'integer' | 'text' | 'boolean';
+
+const SAMPLE_ROWS = 200;
+/** In a column without declared type, this share of text among the cells makes it a text column. */
+const TEXT_SHARE = 0.2;
+
+/**
+ * Rows of a delimited file as typed columns. A column without declared type holds numbers when all its cells do, text
+ * when more than a fifth of them do not; in between the odd cells are taken for mistakes and are named.
+ * @throws Error naming file, line, column and value of a bad cell
+ */
+export function readDelimitedColumns(
+  layout: ScanLayout,
+  declared: readonly DeclaredKind[],
+  request: ReadRequest,
+): { rowCount: number; columns: ColumnValues[]; warnings: string[] } {
+  const warnings: string[] = [];
+  const asText = new Set(request.text);
+  const guesses = guessKinds(layout);
+  const kinds: ScanKind[] = declared.map((kind, j) => {
+    if (asText.has(layout.names[j])) return 'text';
+    if (kind === 'any') return guesses[j];
+    return kind === 'text' || kind === 'boolean' ? 'text' : 'number';
+  });
+  const scan = scanDelimited(layout, kinds);
+  if (scan.rowCount === 0) {
+    throw new Error(`${layout.where}: the file has column names but no rows of data.`);
+  }
+  const columns: (ColumnValues | null)[] = scan.columns.map((column, j) => {
+    if (column.texts !== null) return settleText(layout, column.texts, declared[j], asText, j, request);
+    return keepsNumbers(layout, column, declared[j], j, scan.rowCount, request, warnings) ? column.numbers : null;
+  });
+  const again = columns.flatMap((values, j) => (values === null ? [j] : []));
+  if (again.length > 0) {
+    const second = scanDelimited(
+      layout,
+      kinds.map((_, j) => (again.includes(j) ? 'text' : 'skip')),
+    );
+    for (const j of again) columns[j] = second.columns[j].texts;
+  }
+  return { rowCount: scan.rowCount, columns: columns as ColumnValues[], warnings };
+}
+
+/** Number or text, by the first rows. */
+function guessKinds(layout: ScanLayout): ScanKind[] {
+  const texts = new Int32Array(layout.names.length);
+  const cells = new Int32Array(layout.names.length);
+  const tooLong = new Uint8Array(layout.names.length);
+  for (const record of firstRecords(layout, SAMPLE_ROWS)) {
+    record.forEach((cell, j) => {
+      if (j >= texts.length) return;
+      const text = cell.text.trim();
+      const word = text.toLowerCase();
+      if (MISSING_NUMBERS.has(word) || layout.missingWords[j].has(word)) return;
+      cells[j]++;
+      if (!isNumberText(text)) texts[j]++;
+      else if (isTooLongInteger(text)) tooLong[j] = 1;
+    });
+  }
+  return layout.names.map((_, j) => (tooLong[j] === 1 || texts[j] > TEXT_SHARE * cells[j] ? 'text' : 'number'));
+}
+
+/** The first records that hold data. */
+export function firstRecords(
+  layout: Pick<ScanLayout, 'bytes' | 'start' | 'delimiter' | 'comment' | 'where'>,
+  most: number,
+): RecordCell[][] {
+  const { bytes, delimiter, comment, where } = layout;
+  const records: RecordCell[][] = [];
+  let i = layout.start;
+  while (i < bytes.length && records.length < most) {
+    if (bytes[i] === 10 || bytes[i] === 13) {
+      i++;
+      continue;
+    }
+    const isComment = bytes[i] === comment;
+    const record = splitRecord(bytes, i, delimiter, where);
+    i = isComment ? nextLine(bytes, i) : record.next;
+    if (!isComment) records.push(record.cells);
+  }
+  return records;
+}
+
+function nextLine(bytes: Uint8Array, from: number): number {
+  let p = from;
+  while (p < bytes.length && bytes[p] !== 10 && bytes[p] !== 13) p++;
+  return p + 1;
+}
+
+/** Whether a column read as numbers stays one; false sends it back to be read as text. */
+function keepsNumbers(
+  layout: ScanLayout,
+  column: ScannedColumn,
+  declared: DeclaredKind,
+  j: number,
+  rowCount: number,
+  request: ReadRequest,
+  warnings: string[],
+): boolean {
+  const name = layout.names[j];
+  // A double would change the last digits, and two stars would share a number.
+  if (column.tooLong > 0 && declared !== 'number') return false;
+  if (column.badCount === 0) return true;
+  let numbers = 0;
+  for (const v of column.numbers as Float64Array) if (!Number.isNaN(v)) numbers++;
+  const cells = numbers + column.badCount;
+  if (declared === 'any') {
+    if (column.badCount > TEXT_SHARE * cells) {
+      if (numbers > 0.5 * cells) {
+        warnings.push(
+          `Column "${name}" is read as text: ${column.badCount} of ${rowCount} cells are not numbers ` +
+            `(first on line ${lineOf(layout.bytes, column.firstBad)}: ${quote(column.firstBadText)}).`,
+        );
+      }
+      return false;
+    }
+    // A writer that quotes text only: numbers in quotes beside words are text too.
+    if (column.quotedNumbers === numbers) return false;
+  }
+  badCell(layout, name, column.firstBadText, column.firstBad, column.badCount, request, warnings);
+  return true;
+}
+
+function badCell(
+  layout: ScanLayout,
+  name: string,
+  text: string,
+  offset: number,
+  count: number,
+  request: ReadRequest,
+  warnings: string[],
+): void {
+  const what = `${count === 1 ? 'one cell is' : `${count} cells are`} not a number`;
+  const line = lineOf(layout.bytes, offset);
+  if (request.badCells === 'missing') {
+    warnings.push(
+      `Column "${name}": ${what} and ${count === 1 ? 'is' : 'are'} taken as missing (first on line ${line}: ${quote(text)}).`,
+    );
+    return;
+  }
+  throw new Error(
+    `${layout.where}, line ${line}, column "${name}": ${quote(text)} is not a number` +
+      `${count > 1 ? ` (and ${count - 1} more in this column)` : ''}. ` +
+      `If it means that there is no value, pass missing: { ${JSON.stringify(name)}: [${quote(text)}] }; ` +
+      `badCells: 'missing' takes every such cell as missing; text: [${JSON.stringify(name)}] keeps the column as text.`,
+  );
+}
+
+/** A text column: booleans where every cell is true or false; numbers where all but a few are, after all. */
+function settleText(
+  layout: ScanLayout,
+  texts: (string | null)[],
+  declared: DeclaredKind,
+  asText: ReadonlySet<string>,
+  j: number,
+  request: ReadRequest,
+): ColumnValues {
+  if (asText.has(layout.names[j]) || declared === 'text') return texts;
+  const logical = asBooleans(texts);
+  if (declared === 'boolean') {
+    if (logical !== null) return logical;
+    const wrong = texts.findIndex((t) => t !== null && !/^(?:true|false|0|1)$/i.test(t));
+    throw new Error(
+      `${request.where}, row ${wrong + 1}, column "${layout.names[j]}": ${quote(String(texts[wrong]))} is neither True nor False, as the header declares.`,
+    );
+  }
+  return logical ?? texts;
+}
+
+function asBooleans(texts: readonly (string | null)[]): (boolean | null)[] | null {
+  const out: (boolean | null)[] = [];
+  for (const t of texts) {
+    if (t === null) out.push(null);
+    else if (t === 'True' || t === 'true' || t === 'TRUE') out.push(true);
+    else if (t === 'False' || t === 'false' || t === 'FALSE') out.push(false);
+    else return null;
+  }
+  return out.some((v) => v !== null) ? out : null;
+}
+
+/** A cell as messages show it. */
+export function quote(text: string): string {
+  return JSON.stringify(text.length > 60 ? `${text.slice(0, 57)}...` : text);
+}
