@@ -1,6 +1,15 @@
 import type { Fits } from './fits';
 import type { LifeSource } from './moments';
-import { Giant, heliumBurningLuminosity, heliumBurningRadius, setCurrentMass, setGiant } from './phases/giant';
+import {
+  Giant,
+  heliumBurningLuminosity,
+  heliumBurningRadius,
+  setAsymptotic,
+  setBranch,
+  setCurrentMass,
+  setHeliumDuration,
+  setHeliumShape,
+} from './phases/giant';
 import { asymptoticRadius, giantRadius } from './phases/giant-fits';
 import {
   HOOK_WIDTH,
@@ -19,7 +28,10 @@ export class Life implements LifeSource {
   readonly momentCount = 8;
   private readonly fits: Fits;
   private shaped = false;
-  private evolved = false;
+  private branched = false;
+  private timed = false;
+  private helium = false;
+  private ended = false;
 
   constructor(fits: Fits) {
     this.fits = fits;
@@ -29,7 +41,10 @@ export class Life implements LifeSource {
   setMass(mass: number): void {
     setMainSequenceTimes(this.fits, mass, this.main);
     this.shaped = false;
-    this.evolved = false;
+    this.branched = false;
+    this.timed = false;
+    this.helium = false;
+    this.ended = false;
   }
 
   private shape(): void {
@@ -38,10 +53,32 @@ export class Life implements LifeSource {
     this.shaped = true;
   }
 
-  private evolveOn(): void {
-    if (this.evolved) return;
-    setGiant(this.fits, this.main, this.giant);
-    this.evolved = true;
+  private branch(): void {
+    if (this.branched) return;
+    setBranch(this.fits, this.main, this.giant);
+    this.branched = true;
+  }
+
+  private burnHelium(shape: boolean): void {
+    this.branch();
+    if (!this.timed) setHeliumDuration(this.fits, this.main, this.giant);
+    this.timed = true;
+    if (!shape || this.helium) return;
+    setHeliumShape(this.fits, this.main, this.giant);
+    this.helium = true;
+  }
+
+  private end(): void {
+    if (this.ended) return;
+    this.burnHelium(false);
+    setAsymptotic(this.fits, this.main, this.giant);
+    this.ended = true;
+  }
+
+  /** Works out the whole life at once, so that the fields of `giant` may be read. */
+  complete(): void {
+    this.burnHelium(true);
+    this.end();
   }
 
   /**
@@ -53,16 +90,18 @@ export class Life implements LifeSource {
     if (k === 1) return this.main.timeHook;
     if (k === 2) return this.main.timeEnd;
     if (k === 3) return this.main.timeBase;
-    this.evolveOn();
+    this.branch();
     if (k === 4) return this.giant.timeIgnition;
+    this.burnHelium(false);
     if (k === 5) return this.giant.timeEnding;
+    this.end();
     if (k === 6) return this.giant.timeDredge;
     return this.giant.timeEnd;
   }
 
   /** Sets the later radii for a current mass that winds have made smaller than the one that was set. */
   setCurrentMass(mass: number): void {
-    this.evolveOn();
+    this.complete();
     setCurrentMass(this.fits, this.giant, mass);
   }
 
@@ -70,7 +109,7 @@ export class Life implements LifeSource {
   phaseAt(time: number): number {
     const { main, giant } = this;
     if (time <= main.timeEnd) return PHASE.mainSequence;
-    this.evolveOn();
+    this.end();
     if (time >= giant.timeEnd) return giant.remnant;
     if (time <= main.timeBase) return PHASE.hertzsprungGap;
     if (time <= giant.timeIgnition) return PHASE.giantBranch;
@@ -86,12 +125,13 @@ export class Life implements LifeSource {
       mainSequenceState(main, time, out);
       return;
     }
-    this.evolveOn();
     out.phase = phase;
     out.mass = main.mass;
     switch (phase) {
       case PHASE.hertzsprungGap: {
         this.shape();
+        this.branch();
+        if (giant.early) this.burnHelium(true);
         const tau = clampShare((time - main.timeEnd) / (main.timeBase - main.timeEnd));
         out.luminosity = main.luminosityEnd * Math.exp(tau * Math.log(giant.luminosityGapEnd / main.luminosityEnd));
         out.radius = main.radiusEnd * Math.exp(tau * Math.log(giant.radiusGapEnd / main.radiusEnd));
@@ -101,6 +141,7 @@ export class Life implements LifeSource {
         return;
       }
       case PHASE.giantBranch: {
+        this.branch();
         const clocked = giant.branch.coreAtTime(Math.min(Math.max(time, main.timeBase), giant.timeIgnition));
         out.luminosity = giant.branch.luminosityAtCore(clocked);
         out.radius = giantRadius(fits.b, giant.giantFactor, out.luminosity);
@@ -109,6 +150,7 @@ export class Life implements LifeSource {
         return;
       }
       case PHASE.coreHelium: {
+        this.burnHelium(true);
         const tau = clampShare((time - giant.timeIgnition) / giant.duration);
         out.luminosity = heliumBurningLuminosity(giant, tau);
         out.radius = heliumBurningRadius(fits.b, giant, tau, out.luminosity);
@@ -116,6 +158,7 @@ export class Life implements LifeSource {
         return;
       }
       case PHASE.earlyAsymptotic: {
+        this.end();
         const core = giant.earlyClock.coreAtTime(Math.min(Math.max(time, giant.timeEnding), giant.timeDredge));
         out.luminosity = giant.earlyClock.luminosityAtCore(core);
         out.radius = asymptoticRadius(fits.b, giant.asymptoticFactor, giant.asymptoticExponent, out.luminosity);
@@ -123,6 +166,7 @@ export class Life implements LifeSource {
         return;
       }
       case PHASE.pulsingAsymptotic: {
+        this.end();
         const core = giant.pulsingClock.coreAtTime(Math.min(Math.max(time, giant.timeDredge), giant.timeEnd));
         out.luminosity = giant.pulsingClock.luminosityAtCore(core);
         out.radius = asymptoticRadius(fits.b, giant.asymptoticFactor, giant.asymptoticExponent, out.luminosity);
@@ -130,6 +174,7 @@ export class Life implements LifeSource {
         return;
       }
       default:
+        this.end();
         remnantState(phase, giant.remnantMass, fits.z, time - giant.timeEnd, out);
     }
   }

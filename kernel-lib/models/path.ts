@@ -45,7 +45,7 @@ export const MOST_PIECES = 48;
 /** A step of 1 in log10 of temperature counts as much as a step of 8 in log10 of luminosity, about as on a diagram. */
 const TEMPERATURE_SCALE = 8;
 /** Longest step of the first, coarse pass, in log10 of luminosity. */
-const COARSE_STEP = 0.12;
+const COARSE_STEP = 0.2;
 const MOST_NODES = 8000;
 /** Pieces whose ends lie closer than this on the diagram are one unbroken curve. */
 const JUMP = 2e-3;

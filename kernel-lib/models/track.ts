@@ -94,6 +94,7 @@ function finish(
 ): Track {
   const pieces = new Pieces();
   if (life !== null) {
+    if (life instanceof Life) life.complete();
     const hookless = initialMass <= fitsAt(z).massHook;
     const moments = Array.from({ length: life.momentCount }, (_, k) => life.moment(k));
     const cuts = Float64Array.from(moments.filter((t, k) => Number.isFinite(t) && !(hookless && k < 2))).sort();

@@ -12,6 +12,7 @@ export class CoreClock {
   rate = 0;
   /** Luminosity and core mass where the two power laws cross. */
   luminosityCross = 0;
+  lnLuminosityCross = 0;
   coreCross = 0;
   timeStart = 0;
   luminosityStart = 0;
@@ -27,7 +28,8 @@ export class CoreClock {
     this.lnD = lnD;
     const lnCross = (this.lnB - lnD) / (p - q);
     this.coreCross = Math.exp(lnCross);
-    this.luminosityCross = Math.exp(lnD + p * lnCross);
+    this.lnLuminosityCross = lnD + p * lnCross;
+    this.luminosityCross = Math.exp(this.lnLuminosityCross);
   }
 
   /** Takes over the relation of another clock. */
@@ -38,6 +40,7 @@ export class CoreClock {
     this.lnD = other.lnD;
     this.coreCross = other.coreCross;
     this.luminosityCross = other.luminosityCross;
+    this.lnLuminosityCross = other.lnLuminosityCross;
   }
 
   /** Sets the clock going at a luminosity and time. */
@@ -45,26 +48,28 @@ export class CoreClock {
     this.rate = rate;
     this.timeStart = time;
     this.luminosityStart = luminosity;
+    const lnL = Math.log(luminosity);
     if (luminosity >= this.luminosityCross) {
       this.infinity1 = time;
       this.timeCross = time;
-      this.infinity2 = time + this.remainingHigh(luminosity);
+      this.infinity2 = time + this.remainingHigh(lnL);
       return;
     }
-    const remaining = this.remainingLow(luminosity);
-    this.infinity1 = time + remaining;
-    this.timeCross = this.infinity1 - remaining * (luminosity / this.luminosityCross) ** ((this.p - 1) / this.p);
-    this.infinity2 = this.timeCross + this.remainingHigh(this.luminosityCross);
+    this.infinity1 = time + this.remainingLow(lnL);
+    this.timeCross = this.infinity1 - this.remainingLow(this.lnLuminosityCross);
+    this.infinity2 = this.timeCross + this.remainingHigh(this.lnLuminosityCross);
   }
 
-  private remainingLow(luminosity: number): number {
+  /** Time left at a luminosity before the lower power law would run to infinity. */
+  private remainingLow(lnL: number): number {
     const p = this.p;
-    return Math.exp(((p - 1) / p) * (this.lnD - Math.log(luminosity)) - this.lnD) / ((p - 1) * this.rate);
+    return Math.exp(((p - 1) / p) * (this.lnD - lnL) - this.lnD) / ((p - 1) * this.rate);
   }
 
-  private remainingHigh(luminosity: number): number {
+  /** The same of the upper power law. */
+  private remainingHigh(lnL: number): number {
     const q = this.q;
-    return Math.exp(((q - 1) / q) * (this.lnB - Math.log(luminosity)) - this.lnB) / ((q - 1) * this.rate);
+    return Math.exp(((q - 1) / q) * (this.lnB - lnL) - this.lnB) / ((q - 1) * this.rate);
   }
 
   /** Core mass at a luminosity. */
@@ -83,9 +88,10 @@ export class CoreClock {
 
   /** Time at which a luminosity is reached. */
   timeAtLuminosity(luminosity: number): number {
+    const lnL = Math.log(luminosity);
     return luminosity <= this.luminosityCross
-      ? this.infinity1 - this.remainingLow(luminosity)
-      : this.infinity2 - this.remainingHigh(luminosity);
+      ? this.infinity1 - this.remainingLow(lnL)
+      : this.infinity2 - this.remainingHigh(lnL);
   }
 
   /** Core mass at a time; the clock stands still a little before it would run to infinity. */

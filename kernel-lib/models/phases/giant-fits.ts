@@ -22,6 +22,8 @@ export interface GiantJoins {
   /** ln M of the largest mass that ignites on the giant branch, alpha_bl and f_bl there (Eq. 58). */
   readonly lnMassGiantBranch: number;
   readonly blueAlpha: number;
+  /** ln of the ratio of the two limiting masses. */
+  readonly lnFlashShare: number;
   readonly blueF: number;
   /** Core mass - luminosity relation at the flash limit and at 2.5 solar masses (ln D). */
   readonly lnDFlash: number;
@@ -128,7 +130,9 @@ export function leastLuminosity(
 
 /** Radius factor f of zero-age horizontal-branch stars between the naked helium star (0) and the giant (1). Eq. 54. */
 export function horizontalShare(b: Float64Array, mu: number): number {
-  return ((1 + b[21]) * mu ** b[22]) / (1 + b[21] * mu ** b[23]);
+  if (mu <= 0) return 0;
+  const lnMu = Math.log(mu);
+  return ((1 + b[21]) * Math.exp(b[22] * lnMu)) / (1 + b[21] * Math.exp(b[23] * lnMu));
 }
 
 /** Luminosity on the zero-age horizontal branch, solar. Eq. 53. */
@@ -142,14 +146,15 @@ export function horizontalLuminosity(
   const b = c.b;
   const naked = heliumLuminosity(core);
   const alpha = (b[18] + naked - joins.leastLuminosity) / (joins.leastLuminosity - naked);
-  const share = (1 + b[20]) / (1 + b[20] * mu ** 1.6479);
-  return naked + (share * b[18] * mu ** b[19]) / (1 + alpha * Math.exp(15 * (mass - c.massFlash)));
+  const lnMu = Math.log(mu);
+  const share = (1 + b[20]) / (1 + b[20] * Math.exp(1.6479 * lnMu));
+  return naked + (share * b[18] * Math.exp(b[19] * lnMu)) / (1 + alpha * Math.exp(15 * (mass - c.massFlash)));
 }
 
 /** Smallest radius of the blue phase at and above the flash limit, solar. Eq. 55. */
 export function blueRadiusHigh(b: Float64Array, mass: number, lnMass: number): number {
   const m28 = Math.exp(b[28] * lnMass);
-  return (b[24] * mass + (b[25] * mass) ** b[26] * m28) / (b[27] + m28);
+  return (b[24] * mass + Math.exp(b[26] * (Math.log(b[25]) + lnMass)) * m28) / (b[27] + m28);
 }
 
 function endingLuminosityHigh(b: Float64Array, lnMass: number): number {
@@ -211,6 +216,7 @@ export function giantJoins(c: Coefficients): GiantJoins {
     lnMassGiantBranch: lnBranch,
     blueAlpha: 1 - b[45] * (massFlash / massGiantBranch) ** 0.414,
     blueF: 0,
+    lnFlashShare: lnFlash - lnBranch,
     lnDFlash,
     lnD25: lnDHigh(c.zeta, 2.5),
   };

@@ -51,6 +51,8 @@ export class Giant {
   luminosityIgnition = 0;
   luminosityEnding = 0;
   coreBase = 0;
+  /** Rate of hydrogen burning, see CoreClock. */
+  rate = 0;
   coreIgnition = 0;
   coreEnding = 0;
   coreDredge = 0;
@@ -69,7 +71,6 @@ export class Giant {
   radiusX = 0;
   radiusBlue = 0;
   xi = 1;
-  lnLX = 0;
   lnRiseL = 0;
   lnFallL = 0;
   radiusMin = 0;
@@ -83,50 +84,39 @@ export class Giant {
   remnantMass = 0;
 }
 
-/** Everything up to ignition and the end of core helium burning: enough for times up to the early branch. */
-export function setGiant(f: Fits, s: MainSequence, g: Giant): void {
+/** First stage: the giant branch up to helium ignition. */
+export function setBranch(f: Fits, s: MainSequence, g: Giant): void {
   const { mass, lnMass } = s;
   const { b, giants } = f;
   g.flash = mass < f.massFlash;
   g.early = mass >= f.massGiantBranch;
   g.ignites = true;
   g.giantFactor = giantFactor(b, lnMass);
-  g.asymptoticFactor = asymptoticFactor(f, mass, lnMass);
-  g.asymptoticExponent = asymptoticExponent(f, mass);
   setCoreRelation(f, giants, mass, lnMass, g.branch);
   g.luminosityBase = baseLuminosity(f.a, lnMass);
+  g.luminosityGapEnd = g.luminosityBase;
   g.luminosityIgnition = ignitionLuminosity(f, giants, mass, lnMass);
-  g.luminosityEnding = endingLuminosity(f, giants, mass, lnMass);
   g.coreEnding = endingCore(b, lnMass);
-  const rate = hydrogenRate(mass);
-  if (g.early) {
-    g.timeIgnition = s.timeBase;
-    g.coreIgnition = quarticCore(giants.coreIgnition, lnMass, g.coreEnding);
-    g.coreBase = quarticCore(giants.coreBase, lnMass, g.coreEnding);
-  } else {
-    g.branch.start(rate, g.luminosityBase, s.timeBase);
+  g.rate = hydrogenRate(mass);
+  if (g.early) g.timeIgnition = s.timeBase;
+  else {
+    g.branch.start(g.rate, g.luminosityBase, s.timeBase);
     g.timeIgnition = Math.max(s.timeBase, g.branch.timeAtLuminosity(g.luminosityIgnition));
-    if (g.flash) {
-      g.coreBase = g.branch.coreAtLuminosity(g.luminosityBase);
-      g.coreIgnition = g.branch.coreAtLuminosity(g.luminosityIgnition);
-    } else {
-      g.coreBase = quarticCore(giants.coreBase, lnMass, g.coreEnding);
-      g.coreIgnition = quarticCore(giants.coreIgnition, lnMass, g.coreEnding);
-    }
+    g.radiusGapEnd = giantRadius(b, g.giantFactor, g.luminosityBase);
   }
-  if (g.coreIgnition >= mass) {
-    endWithoutIgnition(b, s, g);
-    return;
+  if (g.flash) {
+    g.coreBase = g.branch.coreAtLuminosity(g.luminosityBase);
+    g.coreIgnition = g.branch.coreAtLuminosity(g.luminosityIgnition);
+  } else {
+    g.coreBase = quarticCore(giants.coreBase, lnMass, g.coreEnding);
+    g.coreIgnition = quarticCore(giants.coreIgnition, lnMass, g.coreEnding);
   }
-  setHeliumBurning(f, s, g);
-  setAsymptotic(s, g, rate);
+  if (g.coreIgnition >= mass) endWithoutIgnition(s, g);
 }
 
 /** A star of very low mass becomes a helium white dwarf when the core has grown to the whole star. */
-function endWithoutIgnition(b: Float64Array, s: MainSequence, g: Giant): void {
+function endWithoutIgnition(s: MainSequence, g: Giant): void {
   g.ignites = false;
-  g.luminosityGapEnd = g.luminosityBase;
-  g.radiusGapEnd = giantRadius(b, g.giantFactor, g.luminosityBase);
   const last = Math.max(s.timeBase, g.branch.timeAtLuminosity(g.branch.luminosityAtCore(s.mass)));
   g.timeIgnition = last;
   g.timeEnding = last;
@@ -138,20 +128,33 @@ function endWithoutIgnition(b: Float64Array, s: MainSequence, g: Giant): void {
   g.remnantMass = s.mass;
 }
 
-function setHeliumBurning(f: Fits, s: MainSequence, g: Giant): void {
+/** Second stage: how long core helium burning lasts and how bright it ends. */
+export function setHeliumDuration(f: Fits, s: MainSequence, g: Giant): void {
+  if (!g.ignites) return;
   const { mass, lnMass } = s;
   const { b, giants } = f;
+  if (g.flash) {
+    const mu = (mass - g.coreIgnition) / (f.massFlash - g.coreIgnition);
+    g.duration =
+      (b[39] + (heliumLifetime(g.coreIgnition) - b[39]) * Math.exp(b[40] * Math.log(1 - mu))) *
+      (1 + giants.duration * Math.exp(15 * (mass - f.massFlash)));
+  } else g.duration = s.timeBase * heliumBurningShare(b, mass, lnMass);
+  g.timeEnding = g.timeIgnition + g.duration;
+  g.luminosityEnding = endingLuminosity(f, giants, mass, lnMass);
+}
+
+/** Third stage: luminosity and radius while helium burns in the core. */
+export function setHeliumShape(f: Fits, s: MainSequence, g: Giant): void {
+  if (!g.ignites) return;
+  const { mass, lnMass } = s;
+  const { b, giants } = f;
+  setAsymptoticLaw(f, s, g);
   g.tauX = 0;
   g.tauY = 1;
-  g.luminosityGapEnd = g.luminosityBase;
   if (g.flash) {
     const mu = (mass - g.coreIgnition) / (f.massFlash - g.coreIgnition);
     g.luminosityX = horizontalLuminosity(f, giants, mass, g.coreIgnition, mu);
-    g.duration =
-      (b[39] + (heliumLifetime(g.coreIgnition) - b[39]) * (1 - mu) ** b[40]) *
-      (1 + giants.duration * Math.exp(15 * (mass - f.massFlash)));
   } else {
-    g.duration = s.timeBase * heliumBurningShare(b, mass, lnMass);
     const lnRatio = lnMass - giants.lnMassGiantBranch;
     if (g.early) {
       const asymptotic = asymptoticRadius(b, g.asymptoticFactor, g.asymptoticExponent, g.luminosityIgnition);
@@ -161,19 +164,24 @@ function setHeliumBurning(f: Fits, s: MainSequence, g: Giant): void {
       g.luminosityX = g.luminosityIgnition;
       g.luminosityGapEnd = g.luminosityIgnition;
     } else {
-      const power = lnRatio / (Math.log(f.massFlash) - giants.lnMassGiantBranch);
+      const power = lnRatio / giants.lnFlashShare;
       const blue = b[45] * Math.exp(0.414 * lnRatio) + giants.blueAlpha * Math.max(0, power) ** b[46];
       g.tauX = 1 - Math.max(0, Math.min(1, blue));
       g.luminosityX = leastLuminosity(f, giants, lnMass, g.luminosityIgnition);
     }
   }
-  g.timeEnding = g.timeIgnition + g.duration;
-  g.lnLX = Math.log(g.luminosityX);
-  g.lnRiseL = Math.log(g.luminosityEnding) - g.lnLX;
-  g.lnFallL = Math.log(g.luminosityIgnition) - g.lnLX;
+  const lnLX = Math.log(g.luminosityX);
+  g.lnRiseL = Math.log(g.luminosityEnding) - lnLX;
+  g.lnFallL = Math.log(g.luminosityIgnition) - lnLX;
   setCharacteristicRadii(f, g, mass, lnMass);
   g.xi = Math.min(2.5, Math.max(0.4, g.radiusBlue / g.radiusX));
   setBluePhase(b, g);
+}
+
+/** Factors of the radius of asymptotic-branch giants. */
+function setAsymptoticLaw(f: Fits, s: MainSequence, g: Giant): void {
+  g.asymptoticFactor = asymptoticFactor(f, s.mass, s.lnMass);
+  g.asymptoticExponent = asymptoticExponent(f, s.mass);
 }
 
 /** Radii at the ends of the gap and of the blue phase, for a current mass whose two factors are set. Eqs 50, 54, 55. */
@@ -253,9 +261,12 @@ export function heliumBurningRadius(b: Float64Array, g: Giant, tau: number, lumi
   return g.radiusMin * Math.exp(Math.abs(q * q * q));
 }
 
-/** Clocks and ends of the two asymptotic branches, without winds. Eqs 68-75 and the observed final masses. */
-function setAsymptotic(s: MainSequence, g: Giant, rate: number): void {
+/** Last stage: clocks and ends of the two asymptotic branches. Eqs 68-75 and the observed final masses. */
+export function setAsymptotic(f: Fits, s: MainSequence, g: Giant): void {
+  if (!g.ignites) return;
   const { mass } = s;
+  const { rate } = g;
+  setAsymptoticLaw(f, s, g);
   g.coreSupernova = Math.max(CHANDRASEKHAR_MASS, 0.773 * g.coreEnding - 0.35);
   g.earlyClock.copyRelation(g.branch);
   g.earlyClock.start(HELIUM_RATE, g.luminosityEnding, g.timeEnding);
@@ -270,7 +281,7 @@ function setAsymptotic(s: MainSequence, g: Giant, rate: number): void {
   g.coreEnd = Math.min(last, g.coreSupernova, g.windy ? last : mass);
   const luminosityDredge = g.earlyClock.luminosityAtCore(Math.min(g.coreDredge, g.coreEnd));
   g.timeDredge = Math.max(g.timeEnding, g.earlyClock.timeAtLuminosity(luminosityDredge));
-  g.lambda = Math.min(0.9, 0.3 + 0.001 * mass ** 5);
+  g.lambda = Math.min(0.9, 0.3 + 0.001 * mass * mass * mass * mass * mass);
   g.pulsingClock.copyRelation(g.branch);
   g.pulsingClock.start(
     (rate * HELIUM_RATE) / (rate + HELIUM_RATE),

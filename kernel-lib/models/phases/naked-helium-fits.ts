@@ -13,7 +13,7 @@ export function heliumLuminosity(mass: number): number {
 /** Zero-age radius of a helium star, Eq. 78. */
 export function heliumRadius(mass: number): number {
   const m3 = mass * mass * mass;
-  return (0.2391 * mass ** 4.6) / (m3 * mass + 0.162 * m3 + 0.0065);
+  return (0.2391 * Math.exp(4.6 * Math.log(mass))) / (m3 * mass + 0.162 * m3 + 0.0065);
 }
 
 /** Core helium burning time of a helium star, Myr, Eq. 79. */

@@ -227,7 +227,7 @@ export class WindLife implements LifeSource {
     const { giant, main } = life;
     let mass0 = this.mass;
     this.setLife(mass0);
-    life.moment(7);
+    life.complete();
     this.begin(PHASE.hertzsprungGap, mass0, main.timeEnd);
     if (!this.follow(PHASE.hertzsprungGap, mass0, main.timeBase, 20)) return PHASE.hertzsprungGap;
     this.moments[3] = this.time;
@@ -239,7 +239,7 @@ export class WindLife implements LifeSource {
     if (giant.flash) {
       mass0 = this.mass;
       this.setLife(mass0);
-      life.moment(7);
+      life.complete();
     }
     if (!giant.ignites) {
       this.remnant = PHASE.heliumWhiteDwarf;
