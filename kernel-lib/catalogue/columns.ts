@@ -52,3 +52,15 @@ export function takeRows(values: ColumnValues, rows: Uint32Array): ColumnValues 
   }
   return Array.from(rows, (r) => values[r]) as ColumnValues;
 }
+
+/** A number as tables show it: five digits, the exponent only where it is shorter. */
+export function shortNumber(value: number): string {
+  if (Number.isInteger(value) && Math.abs(value) < 1e12) return String(value);
+  return String(Number(value.toPrecision(5)));
+}
+
+/** A value as tables show it; missing is empty. */
+export function columnValueText(value: number | string | boolean | null): string {
+  if (value === null || Number.isNaN(value)) return '';
+  return String(value);
+}

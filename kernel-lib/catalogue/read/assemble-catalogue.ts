@@ -8,6 +8,7 @@ import type { RawColumn, RawTable } from './raw-table';
 import type { ReadCatalogueOptions } from './read-catalogue';
 import { type RecognisedRoles, recogniseRoles } from './recognise-roles';
 import { splitBracketUnit } from './role-names';
+import { type SavedState, savedState } from './saved-state';
 import { suspiciousValues } from './suspicious-values';
 
 /** What assembling a catalogue is told, besides the table. */
@@ -25,11 +26,12 @@ export interface AssembleRequest extends ReadCatalogueOptions {
  */
 export function assembleCatalogue(raw: RawTable, request: AssembleRequest): Catalogue {
   const { where, title } = request;
+  const saved = savedState(raw);
   const warnings = [...raw.warnings];
   const notes: string[] = [];
   const columns = raw.columns.map((c) => declareMissing(c, request, notes));
   const recognised = recogniseRoles(columns.map((c) => ({ name: c.name, kind: kindOf(c.values), ucd: c.ucd })));
-  const roles = settleRoles(columns, recognised, request, warnings);
+  const roles = settleRoles(columns, recognised, saved, request, warnings);
   const roleOf = new Map(Object.entries(roles).map(([role, name]) => [name, role as Role]));
   const assumed: string[] = [];
   const converted: string[] = [];
@@ -49,8 +51,6 @@ export function assembleCatalogue(raw: RawTable, request: AssembleRequest): Cata
   if (assumed.length > 0) {
     notes.push(`no unit given, taken as Coeval's own: ${assumed.join(', ')}`);
   }
-  const missing = data.reduce((sum, c) => sum + countMissing(c.values), 0);
-  if (missing > 0) notes.push(`${missing} cells without a value`);
   warnings.push(...suspiciousValues(data, roleOf), ...missingErrors(roles));
   return new Catalogue({
     source: title,
@@ -58,8 +58,9 @@ export function assembleCatalogue(raw: RawTable, request: AssembleRequest): Cata
     columns: data,
     roles,
     warnings,
-    meta: raw.meta,
+    meta: saved?.meta ?? raw.meta,
     history: [
+      ...(saved?.history ?? []),
       {
         action: `read ${title} (${request.packed ? 'gzipped ' : ''}${raw.form})`,
         rowsBefore: raw.rowCount,
@@ -92,11 +93,12 @@ function declareMissing(column: RawColumn, request: AssembleRequest, notes: stri
 function settleRoles(
   columns: readonly RawColumn[],
   recognised: RecognisedRoles,
+  saved: SavedState | null,
   request: AssembleRequest,
   warnings: string[],
 ): Partial<Record<Role, string>> {
   const given = Object.entries(request.roles ?? {}) as [Role, string][];
-  const roles: Partial<Record<Role, string>> = { ...recognised.roles };
+  const roles: Partial<Record<Role, string>> = { ...(saved?.roles ?? recognised.roles) };
   const taken = new Set(given.map(([, name]) => name));
   for (const [role, name] of Object.entries(roles)) if (taken.has(name as string)) delete roles[role as Role];
   for (const [role, name] of given) {
@@ -130,7 +132,7 @@ function settleRoles(
     }
     roles[role] = name;
   }
-  for (const { role, candidates, why } of recognised.open) {
+  for (const { role, candidates, why } of saved === null ? recognised.open : []) {
     if (roles[role] !== undefined || candidates.every((name) => taken.has(name))) continue;
     warnings.push(
       `Role ${role} is not assigned: ${candidates.map((c) => `"${c}"`).join(', ')} (${why}). Say it with roles: { ${JSON.stringify(role)}: ${JSON.stringify(candidates[0])} }.`,

@@ -133,6 +133,7 @@ function findHeader(bytes: Uint8Array, top: Top, delimiter: number, request: Rea
   const { where } = request;
   const isData = (cells: readonly RecordCell[]) =>
     cells.some((c) => isNumberText(c.text.trim())) &&
+    cells.every((c) => !c.quoted) &&
     cells.every((c) => isNumberText(c.text.trim()) || MISSING_NUMBERS.has(c.text.trim().toLowerCase()));
   if (top.first >= bytes.length) {
     throw new Error(`${where}: the file holds only comments, no rows of data.`);
