@@ -113,12 +113,31 @@ function mainSequenceTop(iso: Isochrone): number {
   return last >= 0 ? last : hottest;
 }
 
-/** Going down from the end of the main sequence: where the contraction of the hook begins, or the end itself. */
+/** Share of the mass at the end of the main sequence below which no hook begins. */
+const HOOK_MASS_SHARE = 0.93;
+
+/**
+ * Where the contraction of the hook begins: the deepest valley of temperature in the uppermost part of the main sequence,
+ * between the turnoff and what follows the hook; the end itself where there is no valley.
+ */
 function hookStart(iso: Isochrone, top: number): number {
-  let i = top;
-  while (i > 0 && iso.logTeff[i - 1] < iso.logTeff[i]) i--;
-  // All the way down: the sequence has not turned, so there is no hook.
-  return iso.initialMass[i] < 0.8 * iso.initialMass[top] ? top : i;
+  const { logTeff, initialMass } = iso;
+  let first = top;
+  while (first > 0 && initialMass[first - 1] > HOOK_MASS_SHARE * initialMass[top]) first--;
+  let start = top;
+  let deepest = 1e-5;
+  let above = logTeff[top];
+  for (let i = top - 1; i > first; i--) {
+    let below = Number.NEGATIVE_INFINITY;
+    for (let j = first; j < i; j++) if (logTeff[j] > below) below = logTeff[j];
+    const depth = Math.min(above, below) - logTeff[i];
+    if (depth > deepest) {
+      deepest = depth;
+      start = i;
+    }
+    if (logTeff[i] > above) above = logTeff[i];
+  }
+  return start;
 }
 
 function nothing(iso: Isochrone, note: string): IsochroneTurnoff {

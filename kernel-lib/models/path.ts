@@ -62,12 +62,12 @@ let lastY = 0;
 
 /** Height on the diagram of the state last sampled. */
 function placeY(): number {
-  return Math.log10(state.luminosity);
+  return Math.LOG10E * Math.log(state.luminosity);
 }
 
 /** Place across the diagram, from the temperature. */
 function placeX(y: number): number {
-  return TEMPERATURE_SCALE * 0.25 * (y - 2 * Math.log10(state.radius));
+  return TEMPERATURE_SCALE * 0.25 * (y - 2 * Math.LOG10E * Math.log(state.radius));
 }
 
 /**
@@ -195,8 +195,8 @@ function place(source: PathSource, pieces: Pieces, runs: number, points: number)
       out.parameter[at] = parameter;
       out.mass[at] = state.mass;
       out.coreMass[at] = state.coreMass;
-      out.logL[at] = Math.log10(state.luminosity);
-      out.logR[at] = Math.log10(state.radius);
+      out.logL[at] = Math.LOG10E * Math.log(state.luminosity);
+      out.logR[at] = Math.LOG10E * Math.log(state.radius);
       out.phase[at] = pieces.phase[p];
       at++;
     }

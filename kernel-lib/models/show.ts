@@ -23,22 +23,23 @@ export function numbersPresentation(title: string, record: object): Presentation
   const rows = () =>
     Object.entries(record)
       .filter(([, value]) => value !== '')
-      .map(([key, value]) => [key, shown(value), UNITS[key] ?? '']);
+      .map(([key, value]) => [key, `${shown(value)} ${UNITS[key] ?? ''}`.trimEnd()]);
   return {
-    text: () => `${title}\n${textTable(['', '', ''], rows()).replace(/^\s*\n/, '')}`,
-    html: () => htmlTable(['quantity', 'value', 'unit'], rows(), { caption: title, numeric: [1] }),
+    text: () => `${title}\n${textTable(['', ''], rows()).replace(/^\s*\n/, '')}`,
+    html: () => htmlTable(['quantity', 'value'], rows(), { caption: title }),
   };
 }
 
 /** How a record of equally long columns shows itself: the first rows and the count. */
 export function columnsPresentation(title: string, record: object, most = 12): Presentation {
   const entries = Object.entries(record);
-  const columns = entries.filter(([, value]) => ArrayBuffer.isView(value)) as [string, Float64Array][];
+  const arrays = entries.filter(([, value]) => ArrayBuffer.isView(value)) as [string, Float64Array][];
+  const n = arrays.reduce((longest, [, values]) => Math.max(longest, values.length), 0);
+  const columns = arrays.filter(([, values]) => values.length === n);
   const rest = entries
     .filter(([, value]) => typeof value === 'number' || (typeof value === 'string' && value !== ''))
     .map(([key, value]) => `${key} ${shown(value)}`)
     .join('; ');
-  const n = columns.length > 0 ? columns[0][1].length : 0;
   const head = columns.map(([key]) => (UNITS[key] ? `${key} (${UNITS[key]})` : key));
   const rows = () => Array.from({ length: Math.min(n, most) }, (_, i) => columns.map(([, values]) => shown(values[i])));
   const more = n > most ? `... ${n} rows` : `${n} rows`;

@@ -175,7 +175,8 @@ export class WindLife implements LifeSource {
       for (;;) {
         const halfMass = Math.max(this.mass - (0.5 * rate * d) / pace, 0.5 * this.mass);
         middle = this.rateNow(phase, mass0, halfMass, this.clock + 0.5 * d);
-        if (d <= least || Math.abs(middle - rate) * (d / pace) < 2e-3 * this.mass + 0.01 * spare) break;
+        const change = Math.abs(middle - rate);
+        if (d <= least || change < 0.1 * rate || (change * d) / pace < 2e-5 * this.mass) break;
         d *= 0.5;
       }
       const paceMiddle = this.pace(phase, this.mass - (0.5 * middle * d) / pace);
@@ -292,6 +293,7 @@ export class WindLife implements LifeSource {
         this.remnant = this.naked.mass0 < 1.6 ? PHASE.carbonWhiteDwarf : PHASE.neonWhiteDwarf;
         this.remnantMass = this.mass;
       }
+      this.remnantMass = Math.min(this.remnantMass, this.mass);
     }
   }
 }
