@@ -22,10 +22,9 @@ class SameAge implements PathSource {
 const sameAge = new SameAge();
 
 /**
- * The curve of all stars at a time, at equal steps on the HR diagram; the parameter is the initial mass.
+ * The curve of all shining stars at a time, at equal steps on the HR diagram; the parameter is the initial mass.
  * @param time   Myr
  * @param points number of points
- * @param until  PHASE number from which on stars are left out (by default white dwarfs and other remnants)
  */
 export function traceCurve(
   fits: Fits,
@@ -33,16 +32,15 @@ export function traceCurve(
   table: MomentTable,
   time: number,
   points: number,
-  until: number = PHASE.heliumWhiteDwarf,
 ): PathPoints {
-  cutIntoPieces(fits, source, table, time, until);
+  cutIntoPieces(fits, source, table, time);
   sameAge.source = source;
   sameAge.time = time;
   return followPath(sameAge, pieces, points);
 }
 
 /** Finds the masses between which nothing but the mass changes: same phase, same branch of the fits. */
-function cutIntoPieces(fits: Fits, source: LifeSource, table: MomentTable, time: number, until: number): void {
+function cutIntoPieces(fits: Fits, source: LifeSource, table: MomentTable, time: number): void {
   const lnTime = Math.log(time);
   let count = 0;
   cuts[count++] = MASS_RANGE[0];
@@ -63,7 +61,8 @@ function cutIntoPieces(fits: Fits, source: LifeSource, table: MomentTable, time:
   for (let i = 1; i < count; i++) {
     source.setMass(0.5 * (cuts[i - 1] + cuts[i]));
     const phase = source.phaseAt(time);
-    if (phase < until) pieces.add(cuts[i - 1], cuts[i], phase);
+    // White dwarfs and other remnants are no part of the curve.
+    if (phase < PHASE.heliumWhiteDwarf) pieces.add(cuts[i - 1], cuts[i], phase);
   }
 }
 

@@ -73,7 +73,7 @@ function peer(): { rate: number; worst: number } {
     check: at,
     seconds: SECONDS,
   };
-  const root = process.cwd();
+  const root = process.env.COEVAL_ROOT ?? process.cwd();
   const own = join(root, '.venv/bin/python');
   const python = process.env.COEVAL_PYTHON ?? (existsSync(own) ? own : 'python3');
   const script = join(root, 'test/bench/isochrones_peer.py');
