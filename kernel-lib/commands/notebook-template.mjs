@@ -1,0 +1,214 @@
+/**
+ * Notebooks of an analysis, cell by cell, as nbformat 4.5 JSON. The flagship notebook and those for a user's own catalogue
+ * come from here, so both read the same.
+ */
+
+/** What an analysis needs of a catalogue, apart from photometry, each with what it is. */
+const needed = {
+  properMotionRa: 'proper motion in right ascension, cos(declination) included, mas/yr',
+  'properMotionRa.error': 'its error, mas/yr',
+  properMotionDec: 'proper motion in declination, mas/yr',
+  'properMotionDec.error': 'its error, mas/yr',
+  parallax: 'parallax, mas',
+  'parallax.error': 'its error, mas',
+};
+
+/** Photometry an age can be had from, best first: colour, magnitude, and the other ways to have the colour. */
+const photometries = [
+  { colour: 'BP-RP', magnitude: 'G', parts: ['BP', 'RP'] },
+  { colour: 'B-V', magnitude: 'V', parts: ['B', 'V'] },
+];
+
+const has = (roles, role) => roles[role] !== undefined;
+
+const hasColour = (roles, { colour, parts }) =>
+  has(roles, `colour.${colour}`) || parts.every((band) => has(roles, `magnitude.${band}`));
+
+/** How much of a photometry is there, for choosing what to ask for when none is complete. */
+const completeness = (roles, { magnitude, parts }) =>
+  new Set([magnitude, ...parts])
+    .values()
+    .filter((band) => has(roles, `magnitude.${band}`))
+    .toArray().length;
+
+/**
+ * The photometry that the analysis will use.
+ * @param roles role to column
+ * @returns { colour, magnitude, parts }; the first complete one, else the one of which most is there
+ */
+export function choosePhotometry(roles) {
+  const complete = photometries.find((one) => has(roles, `magnitude.${one.magnitude}`) && hasColour(roles, one));
+  if (complete) return complete;
+  return photometries.toSorted((a, b) => completeness(roles, b) - completeness(roles, a))[0];
+}
+
+/**
+ * Roles without which the analysis cannot go on and which no column is known to have.
+ * @param roles role to column
+ * @returns [role, what it is] of each
+ */
+export function openRoles(roles) {
+  const open = Object.entries(needed).filter(([role]) => !has(roles, role));
+  const photometry = choosePhotometry(roles);
+  const bands = hasColour(roles, photometry) ? [photometry.magnitude] : [photometry.magnitude, ...photometry.parts];
+  const missing = [...new Set(bands)].filter((band) => !has(roles, `magnitude.${band}`));
+  return [...open, ...missing.map((band) => [`magnitude.${band}`, `magnitude in ${band}`])];
+}
+
+const quote = (text) => `'${String(text).replace(/[\\']/g, '\\$&').replace(/\n/g, '\\n').replace(/\r/g, '\\r')}'`;
+const key = (role) => (/^[A-Za-z_$][\w$]*$/.test(role) ? role : quote(role));
+// A column's name may hold anything; in a comment it must not end the line.
+const oneLine = (text) => String(text).replace(/[\u0000-\u001f\u2028\u2029]+/g, ' ');
+const inMarkdown = (text) => oneLine(text).replace(/[\\`*_{}[\]<>#|]/g, '\\$&');
+
+const markdown = (...lines) => ({ type: 'markdown', source: lines.join('\n') });
+const code = (...lines) => ({ type: 'code', source: lines.flat().join('\n') });
+
+/** The cell that reads the catalogue, recognised columns filled in, the others marked CHOOSE. */
+function readingCell({ source, roles, columns, warnings }) {
+  const open = openRoles(roles);
+  if (columns === null) return code(`const field = await readCatalogue(${quote(source)});`, 'field');
+  const free = columns.filter((name) => !Object.values(roles).includes(name)).map(oneLine);
+  const lines = [
+    'const roles = {',
+    ...Object.entries(roles).map(([role, column]) => `  ${key(role)}: ${quote(column)},`),
+  ];
+  for (const [role, what] of open) {
+    lines.push(
+      `  // CHOOSE the column that holds the ${what.replace(/^its error/, `error of ${role.replace('.error', '')}`)}`,
+    );
+    lines.push(`  ${key(role)}: '',`);
+  }
+  lines.push('};');
+  if (open.length > 0) {
+    const shown = free.length > 40 ? [...free.slice(0, 40), '...'] : free;
+    lines.push(`// Columns that have no role yet: ${shown.join(', ') || 'none'}`);
+    lines.push("const unchosen = Object.entries(roles).filter(([, column]) => column === '').map(([role]) => role);");
+    lines.push('if (unchosen.length > 0) {');
+    lines.push(
+      "  throw new Error(`Choose the columns of ${unchosen.join(', ')} (marked CHOOSE in this cell), then run again.`);",
+    );
+    lines.push('}');
+  }
+  for (const warning of warnings) lines.push(`// Look at this: ${oneLine(warning)}`);
+  return code(lines, `const field = await readCatalogue(${quote(source)}, { roles });`, 'field');
+}
+
+const names = [
+  'readCatalogue',
+  'hasBands',
+  'findMembers',
+  'properMotionDiagram',
+  'clusterDistance',
+  'parallaxHistogram',
+  'estimateReddening',
+  'colourMagnitudeDiagram',
+  'physicalProperties',
+  'turnoffPoint',
+  'turnoffAge',
+  'isochrone',
+  'hrDiagram',
+  'clusterSummary',
+];
+
+/** The cells of the analysis, in order. */
+function cellsFor(settings) {
+  const { title, introduction, roles, metallicity } = settings;
+  const { colour, magnitude } = choosePhotometry(roles);
+  const cut = Object.keys(roles).length > 0 && !has(roles, `colour.${colour}`) ? choosePhotometry(roles).parts : [];
+  const bands = [...new Set([magnitude, ...cut])].map(quote).join(', ');
+  return [
+    markdown(`# ${inMarkdown(title)}`, '', introduction),
+    code(
+      `import { ${names.slice(0, 6).join(', ')},`,
+      `  ${names.slice(6, 11).join(', ')},`,
+      `  ${names.slice(11).join(', ')} } from 'coeval';`,
+    ),
+    markdown('## The catalogue', '', 'What was read: units, ranges, missing values, and which column has which role.'),
+    readingCell(settings),
+    markdown('## Stars with usable photometry'),
+    code(`const usable = field.keep(hasBands(${bands}));`, 'usable'),
+    markdown(
+      '## Members',
+      '',
+      'Cluster and field as a mixture in proper motion and parallax, every star with its own errors.',
+    ),
+    code('const members = findMembers(usable);', 'members'),
+    code('properMotionDiagram(usable, { probability: members.probability })'),
+    code(
+      '// Stars more likely members than not. Raise the limit for a purer, smaller sample.',
+      'const cluster = members.select(0.5);',
+      'cluster',
+    ),
+    markdown('## Distance', '', 'From the parallaxes of the members, with a spread of their own beside the errors.'),
+    code('const distance = clusterDistance(cluster);', 'distance'),
+    code('parallaxHistogram(usable, { probability: members.probability, parallax: distance.parallax })'),
+    markdown(
+      '## Reddening',
+      '',
+      'From the unevolved main sequence. Put a value of the literature in its place if there is a better one.',
+    ),
+    code(
+      '// [Fe/H] in dex: assumed here, not measured.',
+      `const metallicity = ${metallicity};`,
+      'const reddening = estimateReddening(cluster, { distance: distance.distance, metallicity });',
+      'reddening',
+    ),
+    markdown('## Turnoff and age'),
+    code(
+      'const place = { distance: distance.distance, ebv: reddening, metallicity };',
+      'const turnoff = turnoffPoint(cluster, place);',
+      'turnoff',
+    ),
+    code('const age = turnoffAge(cluster, place);', 'age'),
+    markdown('## Colour-magnitude and HR diagram', '', `With the isochrone of the age found, in ${colour}.`),
+    code(
+      'const curve = isochrone({ logAge: 9 + Math.log10(age.age.value), metallicity });',
+      `colourMagnitudeDiagram(cluster, { colour: ${quote(colour)}, modulus: distance.modulus.value, ebv: reddening.value, isochrones: [curve] })`,
+    ),
+    code('const stars = physicalProperties(cluster, place);', 'hrDiagram(stars, { isochrones: [curve], metallicity })'),
+    markdown('## Result'),
+    code(`clusterSummary({ name: ${quote(title)}, members, distance, reddening, age, metallicity })`),
+  ];
+}
+
+const toCell = ({ type, source }, index) => ({
+  cell_type: type,
+  id: `coeval-${String(index + 1).padStart(2, '0')}`,
+  metadata: {},
+  source: source.split('\n').map((line, i, all) => (i < all.length - 1 ? `${line}\n` : line)),
+  ...(type === 'code' ? { execution_count: null, outputs: [] } : {}),
+});
+
+/**
+ * A notebook of the whole way from a field catalogue to an age.
+ * @param options.title        heading, also the name of the cluster in the result
+ * @param options.source       path of the catalogue as the notebook's cells name it
+ * @param options.introduction markdown under the heading
+ * @param options.roles        role to column, as recognised
+ * @param options.columns      every column of the catalogue; null when the file says all by itself and no roles are to be listed
+ * @param options.warnings     what the reader found odd, a sentence each
+ * @param options.metallicity  [Fe/H], dex
+ * @returns nbformat 4.5 JSON without outputs
+ * @example notebookFor({ title: 'My cluster', source: 'field.csv', roles: { parallax: 'plx' }, columns: ['plx', 'g'] })
+ */
+export function notebookFor({
+  title,
+  source,
+  introduction = 'From the field catalogue to the age of the cluster. Every step can be changed; run the cells below it again then.',
+  roles = {},
+  columns = null,
+  warnings = [],
+  metallicity = 0,
+}) {
+  const cells = cellsFor({ title, source, introduction, roles, columns, warnings, metallicity });
+  return {
+    cells: cells.map(toCell),
+    metadata: {
+      kernelspec: { display_name: 'TypeScript (tslab)', language: 'typescript', name: 'tslab' },
+      language_info: { file_extension: '.ts', mimetype: 'text/typescript', name: 'typescript' },
+    },
+    nbformat: 4,
+    nbformat_minor: 5,
+  };
+}
