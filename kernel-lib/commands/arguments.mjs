@@ -1,4 +1,4 @@
-import { parseArgs } from 'node:util';
+import util from 'node:util';
 import { Problem } from './problem.mjs';
 
 export const help = `Coeval: from a field catalogue to the age of a star cluster, in a notebook.
@@ -25,7 +25,7 @@ const listed = Object.keys(options)
  * @throws Problem on an unknown option or more than one catalogue
  */
 export function readArguments(words) {
-  const { tokens } = parseArgs({ args: words, options, strict: false, allowPositionals: true, tokens: true });
+  const { tokens } = util.parseArgs({ args: words, options, strict: false, allowPositionals: true, tokens: true });
   const paths = [];
   const given = new Set();
   for (const token of tokens) {

@@ -26,10 +26,7 @@ const hasColour = (roles, { colour, parts }) =>
 
 /** How much of a photometry is there, for choosing what to ask for when none is complete. */
 const completeness = (roles, { magnitude, parts }) =>
-  new Set([magnitude, ...parts])
-    .values()
-    .filter((band) => has(roles, `magnitude.${band}`))
-    .toArray().length;
+  [...new Set([magnitude, ...parts])].filter((band) => has(roles, `magnitude.${band}`)).length;
 
 /**
  * The photometry that the analysis will use.
@@ -58,7 +55,7 @@ export function openRoles(roles) {
 const quote = (text) => `'${String(text).replace(/[\\']/g, '\\$&').replace(/\n/g, '\\n').replace(/\r/g, '\\r')}'`;
 const key = (role) => (/^[A-Za-z_$][\w$]*$/.test(role) ? role : quote(role));
 // A column's name may hold anything; in a comment it must not end the line.
-const oneLine = (text) => String(text).replace(/[\u0000-\u001f\u2028\u2029]+/g, ' ');
+const oneLine = (text) => String(text).replace(/[\p{Cc}\p{Zl}\p{Zp}]+/gu, ' ');
 const inMarkdown = (text) => oneLine(text).replace(/[\\`*_{}[\]<>#|]/g, '\\$&');
 
 const markdown = (...lines) => ({ type: 'markdown', source: lines.join('\n') });
@@ -85,8 +82,9 @@ function readingCell({ source, roles, columns, warnings }) {
     lines.push(`// Columns that have no role yet: ${shown.join(', ') || 'none'}`);
     lines.push("const unchosen = Object.entries(roles).filter(([, column]) => column === '').map(([role]) => role);");
     lines.push('if (unchosen.length > 0) {');
+    lines.push("  const list = unchosen.join(', ');");
     lines.push(
-      "  throw new Error(`Choose the columns of ${unchosen.join(', ')} (marked CHOOSE in this cell), then run again.`);",
+      "  throw new Error('Choose the columns of ' + list + ' (marked CHOOSE in this cell), then run again.');",
     );
     lines.push('}');
   }
@@ -114,8 +112,8 @@ const names = [
 /** The cells of the analysis, in order. */
 function cellsFor(settings) {
   const { title, introduction, roles, metallicity } = settings;
-  const { colour, magnitude } = choosePhotometry(roles);
-  const cut = Object.keys(roles).length > 0 && !has(roles, `colour.${colour}`) ? choosePhotometry(roles).parts : [];
+  const { colour, magnitude, parts } = choosePhotometry(roles);
+  const cut = has(roles, `colour.${colour}`) ? [] : parts;
   const bands = [...new Set([magnitude, ...cut])].map(quote).join(', ');
   return [
     markdown(`# ${inMarkdown(title)}`, '', introduction),

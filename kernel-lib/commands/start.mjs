@@ -11,7 +11,7 @@ import { notebookFor, openRoles } from './notebook-template.mjs';
 import { inRoot } from './paths.mjs';
 import { Problem, runCommand } from './problem.mjs';
 import { createProgress } from './progress.mjs';
-import { setUp } from './set-up.mjs';
+import { checkMachine, setUp } from './set-up.mjs';
 
 const flagship = inRoot('notebooks', '01-from-field-to-age.ipynb');
 const results = inRoot('notebooks', 'results');
@@ -76,6 +76,7 @@ function tellFailure(failure, { open }) {
 }
 
 async function main() {
+  checkMachine();
   const words = readArguments(process.argv.slice(2));
   if (words.help) {
     console.log(help);
