@@ -77,9 +77,17 @@ export class Catalogue {
     Object.freeze(this);
   }
 
-  /** The rows as an arquero table, sharing the columns. */
+  /**
+   * The rows as an arquero table, sharing the columns. Such a table keeps its columns in a plain object, which cannot hold
+   * the name `__proto__`: a column of that name is called `__proto__column` there.
+   */
   get table(): ColumnTable {
-    this.#cache.table ??= makeTable(Array.from(this.#values, ([name, values]) => [name, values] as [string, never]));
+    this.#cache.table ??= makeTable(
+      Array.from(
+        this.#values,
+        ([name, values]) => [name === '__proto__' ? '__proto__column' : name, values] as [string, never],
+      ),
+    );
     return this.#cache.table;
   }
 

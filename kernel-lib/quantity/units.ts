@@ -141,6 +141,9 @@ function makeSymbols(): Map<string, Symbol_> {
   return symbols;
 }
 
+/** Units of catalogues, offered first where a word is not known. */
+const COMMON: readonly string[] = ['mas', 'deg', 'arcsec', 'mag', 'pc', 'kpc', 'yr', 'Gyr', 'K', 'km'];
+
 /** Ways to write "no unit". */
 const NONE: ReadonlySet<string> = new Set(['', '-', '--', '---', '1', 'none', 'dimensionless', 'unitless', 'null']);
 
@@ -265,13 +268,7 @@ class UnitReader {
 
   #unknown(part: string): Error {
     const word = part.trim();
-    const near =
-      word === ''
-        ? null
-        : nearest(
-            word,
-            [...SYMBOLS.keys()].filter((k) => Math.abs(k.length - word.length) <= 2),
-          );
+    const near = word === '' ? null : nearest(word, [...COMMON, ...SYMBOLS.keys()]);
     const of = word === this.#whole.trim() || word === '' ? '' : ` (at "${word}")`;
     return new Error(`unknown unit ${JSON.stringify(this.#whole)}${of}${near ? `; did you mean "${near}"?` : ''}`);
   }

@@ -4,6 +4,7 @@ import { Catalogue } from '../catalogue';
 import { type ColumnData, type ColumnValues, countMissing, kindOf } from '../columns';
 import { isRole, type Role, unitOfRole } from '../roles';
 import { missingOf } from './declared-missing';
+import { optionKey } from './delimited-columns';
 import type { RawColumn, RawTable } from './raw-table';
 import type { ReadCatalogueOptions } from './read-catalogue';
 import { type RecognisedRoles, recogniseRoles } from './recognise-roles';
@@ -135,7 +136,7 @@ function settleRoles(
   for (const { role, candidates, why } of saved === null ? recognised.open : []) {
     if (roles[role] !== undefined || candidates.every((name) => taken.has(name))) continue;
     warnings.push(
-      `Role ${role} is not assigned: ${candidates.map((c) => `"${c}"`).join(', ')} (${why}). Say it with roles: { ${JSON.stringify(role)}: ${JSON.stringify(candidates[0])} }.`,
+      `Role ${role} is not assigned: ${candidates.map((c) => `"${c}"`).join(', ')} (${why}). Say it with roles: { ${optionKey(role)}: ${JSON.stringify(candidates[0])} }.`,
     );
   }
   return roles;
@@ -159,7 +160,7 @@ function unitOf(
     if (!Object.hasOwn(given, column.name) && column.unit === '' && byName === '') return '';
     const likely = role === undefined ? '' : unitOfRole(role);
     throw new Error(
-      `${request.where}, column "${column.name}": ${(error as Error).message}. Pass units: { ${JSON.stringify(column.name)}: ${JSON.stringify(likely)} }${likely === '' ? " ('' for none)" : ''}.`,
+      `${request.where}, column "${column.name}": ${sentence((error as Error).message)} Pass units: { ${optionKey(column.name)}: ${JSON.stringify(likely)} }${likely === '' ? " ('' for none)" : ''}.`,
     );
   }
 }
@@ -186,7 +187,7 @@ function inUnit(
     return out;
   } catch {
     throw new Error(
-      `${where}, column "${name}": role ${role} needs a unit like ${to}, the column is in "${from}". Pass units: { ${JSON.stringify(name)}: ${JSON.stringify(to)} } if the file is wrong, or roles: { ... } if another column carries it.`,
+      `${where}, column "${name}": role ${role} needs a unit like ${to}, the column is in "${from}". Pass units: { ${optionKey(name)}: ${JSON.stringify(to)} } if the file is wrong, or roles: { ... } if another column carries it.`,
     );
   }
 }
@@ -202,6 +203,10 @@ function missingErrors(roles: Partial<Record<Role, string>>): string[] {
   return without.length === 0
     ? []
     : [
-        `No error column for ${without.join(', ')}: name it with roles: { ${JSON.stringify(`${without[0]}.error`)}: '...' } if there is one.`,
+        `No error column for ${without.join(', ')}: name it with roles: { ${optionKey(`${without[0]}.error`)}: '...' } if there is one.`,
       ];
+}
+
+function sentence(text: string): string {
+  return /[.?]$/.test(text) ? text : `${text}.`;
 }

@@ -10,6 +10,11 @@ export function checkNames(
 ): readonly string[] {
   const seen = new Map<string, number>();
   return names.map((given, j) => {
+    if (given.includes('\ufffd')) {
+      throw new Error(
+        `${request.where}, line ${line}: the column names are not UTF-8 (${quote(given)}). Save the file as UTF-8.`,
+      );
+    }
     let name = given;
     if (name === '') {
       name = `column${j + 1}`;

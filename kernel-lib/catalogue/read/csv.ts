@@ -100,10 +100,9 @@ function findDelimiter(bytes: Uint8Array, top: Top, where: string): number {
   let best = 44;
   let bestScore = -1;
   for (const [byte] of DELIMITERS) {
-    const records = firstRecordsSafely(bytes, top.first, byte, where);
-    if (records.length === 0) continue;
-    const cells = records[0].length;
-    const same = records.filter((r) => r.length === cells).length / records.length;
+    const counts = cellCounts(bytes, top.first, byte, where);
+    const cells = counts[0];
+    const same = counts.filter((n) => n === cells).length / counts.length;
     const score = cells < 2 ? 0 : same + (cells > 2 ? 0.02 : 0) + Math.min(cells, 1000) * 1e-5;
     if (score > bestScore + 1e-9) {
       best = byte;
@@ -113,12 +112,19 @@ function findDelimiter(bytes: Uint8Array, top: Top, where: string): number {
   return best;
 }
 
-function firstRecordsSafely(bytes: Uint8Array, start: number, delimiter: number, where: string): RecordCell[][] {
-  try {
-    return firstRecords({ bytes, start, delimiter, comment: HASH, where }, 30);
-  } catch {
-    return [];
+/** Cells in each of the first records; where a quote is not closed, in those before it, or in the first line as it stands. */
+function cellCounts(bytes: Uint8Array, start: number, delimiter: number, where: string): number[] {
+  const layout = { bytes, start, delimiter, comment: HASH, where };
+  for (let most = 30; most > 0; most = Math.floor(most / 2)) {
+    try {
+      const records = firstRecords(layout, most);
+      if (records.length > 0) return records.map((r) => r.length);
+    } catch {
+      // Fewer records may end before the broken one.
+    }
   }
+  const line = bytes.subarray(start, afterLine(bytes, start));
+  return [line.filter((c) => c === delimiter).length + 1];
 }
 
 interface Header {
@@ -141,7 +147,10 @@ function findHeader(bytes: Uint8Array, top: Top, delimiter: number, request: Rea
   const first = splitRecord(bytes, top.first, delimiter, where);
   const line = lineOf(bytes, top.first);
   if (isData(first.cells)) {
-    if (request.columnNames) return { names: request.columnNames, line, units: null, start: top.first };
+    if (request.columnNames) {
+      checkCount(request.columnNames, first.cells.length, where);
+      return { names: request.columnNames, line, units: null, start: top.first };
+    }
     if (top.comment >= 0) {
       const commented = splitRecord(bytes, top.comment + 1, delimiter, where).cells;
       if (commented.length === first.cells.length && commented.every((c) => c.text.trim() !== '')) {
@@ -158,16 +167,17 @@ function findHeader(bytes: Uint8Array, top: Top, delimiter: number, request: Rea
     );
   }
   const found = first.cells.map((c) => (c.quoted ? c.text : c.text.trim()));
-  if (request.columnNames && request.columnNames.length !== found.length) {
-    throw new Error(
-      `${where}: columnNames has ${request.columnNames.length} names, the file has ${found.length} columns.`,
-    );
-  }
+  if (request.columnNames) checkCount(request.columnNames, found.length, where);
   return {
     names: request.columnNames ?? found,
     line,
     ...afterHeader(bytes, first.next, delimiter, found.length, where),
   };
+}
+
+function checkCount(names: readonly string[], columns: number, where: string): void {
+  if (names.length === columns) return;
+  throw new Error(`${where}: columnNames has ${names.length} names, the file has ${columns} columns.`);
 }
 
 /** Units between the names and a line of dashes, if there is one among the next three lines. */

@@ -34,34 +34,56 @@ export function readDelimitedColumns(
   const guesses = guessKinds(layout);
   const kinds: ScanKind[] = declared.map((kind, j) => {
     if (asText.has(layout.names[j])) return 'text';
-    if (kind === 'any') return guesses[j];
+    if (kind === 'any') return guesses[j].kind;
     return kind === 'text' || kind === 'boolean' ? 'text' : 'number';
   });
   const scan = scanDelimited(layout, kinds);
   if (scan.rowCount === 0) {
     throw new Error(`${layout.where}: the file has column names but no rows of data.`);
   }
-  const columns: (ColumnValues | null)[] = scan.columns.map((column, j) => {
-    if (column.texts !== null) return settleText(layout, column.texts, declared[j], asText, j, request);
-    return keepsNumbers(layout, column, declared[j], j, scan.rowCount, request, warnings) ? column.numbers : null;
-  });
-  const again = columns.flatMap((values, j) => (values === null ? [j] : []));
-  if (again.length > 0) {
-    const second = scanDelimited(
-      layout,
-      kinds.map((_, j) => (again.includes(j) ? 'text' : 'skip')),
+  if (scan.rowComments > 0) {
+    warnings.push(
+      `${scan.rowComments} ${scan.rowComments === 1 ? 'line that begins' : 'lines that begin'} with # among the rows ${scan.rowComments === 1 ? 'is' : 'are'} taken as comments (first on line ${lineOf(layout.bytes, scan.firstRowComment)}). If they are rows, put the first cell in double quotes.`,
     );
-    for (const j of again) columns[j] = second.columns[j].texts;
   }
-  return { rowCount: scan.rowCount, columns: columns as ColumnValues[], warnings };
+  const columns: (ColumnValues | null)[] = scan.columns.map((column, j) => {
+    if (column.numbers === null) return column.texts;
+    return keepsNumbers(layout, column, declared[j], j, request, warnings) ? column.numbers : null;
+  });
+  const readAgain = kinds.map((kind, j): ScanKind => {
+    if (columns[j] === null) return 'text';
+    const doubtful = kind === 'text' && declared[j] === 'any' && guesses[j].hasNumbers && !asText.has(layout.names[j]);
+    return doubtful && isMostlyNumbers(columns[j] as readonly (string | null)[]) ? 'number' : 'skip';
+  });
+  if (readAgain.some((kind) => kind !== 'skip')) {
+    scanDelimited(layout, readAgain).columns.forEach((column, j) => {
+      if (column.texts !== null) columns[j] = column.texts;
+      else if (column.numbers !== null && keepsNumbers(layout, column, declared[j], j, request, warnings)) {
+        columns[j] = column.numbers;
+      }
+    });
+  }
+  const settled = columns.map((values, j) => {
+    if (values instanceof Float64Array || asText.has(layout.names[j])) return values as ColumnValues;
+    const texts = values as (string | null)[];
+    if (declared[j] === 'any' && guesses[j].hasNumbers) noteMixed(layout.names[j], texts, warnings);
+    return settleText(layout, texts, declared[j], j);
+  });
+  return { rowCount: scan.rowCount, columns: settled, warnings };
 }
 
-/** Number or text, by the first rows. */
-function guessKinds(layout: ScanLayout): ScanKind[] {
+interface Guess {
+  readonly kind: 'number' | 'text';
+  /** Whether there were numbers among the cells looked at. */
+  readonly hasNumbers: boolean;
+}
+
+/** Number or text, by the first rows and some from further down. */
+function guessKinds(layout: ScanLayout): Guess[] {
   const texts = new Int32Array(layout.names.length);
   const cells = new Int32Array(layout.names.length);
   const tooLong = new Uint8Array(layout.names.length);
-  for (const record of firstRecords(layout, SAMPLE_ROWS)) {
+  for (const record of [...firstRecords(layout, SAMPLE_ROWS), ...laterRecords(layout)]) {
     record.forEach((cell, j) => {
       if (j >= texts.length) return;
       const text = cell.text.trim();
@@ -72,7 +94,24 @@ function guessKinds(layout: ScanLayout): ScanKind[] {
       else if (isTooLongInteger(text)) tooLong[j] = 1;
     });
   }
-  return layout.names.map((_, j) => (tooLong[j] === 1 || texts[j] > TEXT_SHARE * cells[j] ? 'text' : 'number'));
+  return layout.names.map((_, j) => ({
+    kind: tooLong[j] === 1 || texts[j] > TEXT_SHARE * cells[j] ? 'text' : 'number',
+    hasNumbers: tooLong[j] === 0 && cells[j] > texts[j],
+  }));
+}
+
+/** Some records from the middle of the file. A quoted line end may put them out of step; those of a wrong length are left out. */
+function laterRecords(layout: ScanLayout): RecordCell[][] {
+  const { bytes, start } = layout;
+  if (bytes.length - start < 1 << 14) return [];
+  return [0.2, 0.4, 0.6, 0.8].flatMap((part) => {
+    const from = nextLine(bytes, start + Math.floor(part * (bytes.length - start)));
+    try {
+      return firstRecords({ ...layout, start: from }, SAMPLE_ROWS / 4).filter((r) => r.length === layout.names.length);
+    } catch {
+      return [];
+    }
+  });
 }
 
 /** The first records that hold data. */
@@ -108,7 +147,6 @@ function keepsNumbers(
   column: ScannedColumn,
   declared: DeclaredKind,
   j: number,
-  rowCount: number,
   request: ReadRequest,
   warnings: string[],
 ): boolean {
@@ -120,15 +158,7 @@ function keepsNumbers(
   for (const v of column.numbers as Float64Array) if (!Number.isNaN(v)) numbers++;
   const cells = numbers + column.badCount;
   if (declared === 'any') {
-    if (column.badCount > TEXT_SHARE * cells) {
-      if (numbers > 0.5 * cells) {
-        warnings.push(
-          `Column "${name}" is read as text: ${column.badCount} of ${rowCount} cells are not numbers ` +
-            `(first on line ${lineOf(layout.bytes, column.firstBad)}: ${quote(column.firstBadText)}).`,
-        );
-      }
-      return false;
-    }
+    if (column.badCount > TEXT_SHARE * cells) return false;
     // A writer that quotes text only: numbers in quotes beside words are text too.
     if (column.quotedNumbers === numbers) return false;
   }
@@ -156,27 +186,55 @@ function badCell(
   throw new Error(
     `${layout.where}, line ${line}, column "${name}": ${quote(text)} is not a number` +
       `${count > 1 ? ` (and ${count - 1} more in this column)` : ''}. ` +
-      `If it means that there is no value, pass missing: { ${JSON.stringify(name)}: [${quote(text)}] }; ` +
+      `If it means that there is no value, pass missing: { ${optionKey(name)}: [${quote(text)}] }; ` +
       `badCells: 'missing' takes every such cell as missing; text: [${JSON.stringify(name)}] keeps the column as text.`,
   );
 }
 
-/** A text column: booleans where every cell is true or false; numbers where all but a few are, after all. */
-function settleText(
-  layout: ScanLayout,
-  texts: (string | null)[],
-  declared: DeclaredKind,
-  asText: ReadonlySet<string>,
-  j: number,
-  request: ReadRequest,
-): ColumnValues {
-  if (asText.has(layout.names[j]) || declared === 'text') return texts;
+/** Whether a column that was read as text should be read as numbers after all. */
+function isMostlyNumbers(texts: readonly (string | null)[]): boolean {
+  const { numbers, words, tooLong } = countKinds(texts);
+  return !tooLong && numbers > 0 && words <= TEXT_SHARE * (numbers + words);
+}
+
+/** Says so when a column that is text holds mostly numbers. */
+function noteMixed(name: string, texts: readonly (string | null)[], warnings: string[]): void {
+  const { numbers, words, first, tooLong } = countKinds(texts);
+  if (tooLong || words === 0 || numbers <= words) return;
+  warnings.push(
+    `Column "${name}" is read as text: ${words} of its ${texts.length} cells are not numbers (first in row ${first + 1}: ${quote(String(texts[first]))}).`,
+  );
+}
+
+function countKinds(texts: readonly (string | null)[]): {
+  numbers: number;
+  words: number;
+  first: number;
+  tooLong: boolean;
+} {
+  let numbers = 0;
+  let words = 0;
+  let first = -1;
+  let tooLong = false;
+  for (let i = 0; i < texts.length; i++) {
+    const text = texts[i];
+    if (text === null || MISSING_NUMBERS.has(text.trim().toLowerCase())) continue;
+    if (isNumberText(text.trim())) {
+      numbers++;
+      tooLong ||= isTooLongInteger(text.trim());
+    } else if (words++ === 0) first = i;
+  }
+  return { numbers, words, first, tooLong };
+}
+
+/** A text column: booleans where every cell is true or false. */
+function settleText(layout: ScanLayout, texts: (string | null)[], declared: DeclaredKind, j: number): ColumnValues {
+  if (declared === 'text') return texts;
   const logical = asBooleans(texts);
-  if (declared === 'boolean') {
-    if (logical !== null) return logical;
-    const wrong = texts.findIndex((t) => t !== null && !/^(?:true|false|0|1)$/i.test(t));
+  if (declared === 'boolean' && logical === null && texts.some((t) => t !== null)) {
+    const wrong = texts.findIndex((t) => t !== null && !/^(?:true|false)$/i.test(t));
     throw new Error(
-      `${request.where}, row ${wrong + 1}, column "${layout.names[j]}": ${quote(String(texts[wrong]))} is neither True nor False, as the header declares.`,
+      `${layout.where}, row ${wrong + 1}, column "${layout.names[j]}": ${quote(String(texts[wrong]))} is neither True nor False, as the header declares.`,
     );
   }
   return logical ?? texts;
@@ -196,4 +254,9 @@ function asBooleans(texts: readonly (string | null)[]): (boolean | null)[] | nul
 /** A cell as messages show it. */
 export function quote(text: string): string {
   return JSON.stringify(text.length > 60 ? `${text.slice(0, 57)}...` : text);
+}
+
+/** A column or role name as the key of an option in an example. */
+export function optionKey(name: string): string {
+  return /^[A-Za-z_$][\w$]*$/.test(name) ? name : JSON.stringify(name);
 }

@@ -15,11 +15,11 @@ export interface ScanLayout {
   /** Byte that begins a comment line, -1 for none. */
   readonly comment: number;
   readonly names: readonly string[];
-  /** Whether quoted "NA" and "" are missing too (a file in which every cell is quoted, where quotes say nothing). */
+  /** Whether a quoted word for missing, or a quoted nothing, is missing too. */
   readonly quotesSayNothing: boolean;
   /** Extra words for missing, a set a column. */
   readonly missingWords: readonly ReadonlySet<string>[];
-  /** Whether blank lines are passed over. */
+  /** How messages begin. */
   readonly where: string;
   /** Whether the file declares types, so that an unquoted NA in a text column is a text. */
   readonly typed: boolean;
@@ -43,6 +43,9 @@ export interface ScannedColumn {
 
 export interface Scan {
   readonly rowCount: number;
+  /** Comment lines among the rows that have as many cells as a row, and the offset of the first (-1 for none). */
+  readonly rowComments: number;
+  readonly firstRowComment: number;
   readonly columns: readonly ScannedColumn[];
 }
 
@@ -90,6 +93,8 @@ export function scanDelimited(
   const slow = new SlowCells(layout, counts);
   const end = bytes.length;
   let row = 0;
+  let rowComments = 0;
+  let firstRowComment = -1;
   let i = layout.start;
 
   while (i < end && row < maxRows) {
@@ -99,6 +104,10 @@ export function scanDelimited(
       continue;
     }
     if (first === comment) {
+      if (n > 1 && hasCells(layout, i)) {
+        rowComments++;
+        if (firstRowComment < 0) firstRowComment = i;
+      }
       i = afterLine(bytes, i);
       continue;
     }
@@ -209,6 +218,8 @@ export function scanDelimited(
 
   return {
     rowCount: row,
+    rowComments,
+    firstRowComment,
     columns: kinds.map((kind, j) => {
       const column = {
         numbers: kind === 'number' ? trimmed(numbers[j], row) : null,
@@ -230,12 +241,15 @@ class SlowCells {
   #quoted = false;
   readonly #layout: ScanLayout;
   readonly #counts: readonly Counts[];
+  /** In a single column an empty line is no cell, so that \\N stands for a missing text even where types are declared. */
+  readonly #isAlone: boolean;
   /** The content of a quoted cell with doubled quotes made single. */
   #unquoted: Uint8Array = new Uint8Array(64);
 
   constructor(layout: ScanLayout, counts: readonly Counts[]) {
     this.#layout = layout;
     this.#counts = counts;
+    this.#isAlone = layout.names.length === 1;
   }
 
   number(start: number, column: number): number {
@@ -266,7 +280,7 @@ class SlowCells {
       let isMissing = length === 0;
       if (!isMissing && (length <= LONGEST_MISSING_WORD || words.size > 0)) {
         const word = latin(source, this.#from, this.#to).toLowerCase();
-        isMissing = (!this.#layout.typed && MISSING_TEXTS.has(word)) || words.has(word);
+        isMissing = (this.#layout.typed ? this.#isAlone && word === '\\n' : MISSING_TEXTS.has(word)) || words.has(word);
       }
       if (isMissing) {
         out.addMissing();
@@ -337,6 +351,16 @@ function latin(bytes: Uint8Array, from: number, to: number): string {
   let text = '';
   for (let p = from; p < to && p < from + 400; p++) text += String.fromCharCode(bytes[p]);
   return text;
+}
+
+/** Whether a comment line would make a row. */
+function hasCells(layout: ScanLayout, from: number): boolean {
+  const { bytes, delimiter, names } = layout;
+  let separators = 0;
+  for (let p = from; p < bytes.length && bytes[p] !== NEWLINE && bytes[p] !== RETURN; p++) {
+    if (bytes[p] === delimiter) separators++;
+  }
+  return separators === names.length - 1;
 }
 
 /** Exact length without slack, so that a column's buffer holds the column and nothing else. */

@@ -54,7 +54,8 @@ export function readEcsv(given: Uint8Array, request: ReadRequest): RawTable {
     delimiter,
     comment: HASH,
     names,
-    quotesSayNothing: false,
+    // Others write an empty text and a missing one alike, as ""; files of our own tell them apart.
+    quotesSayNothing: header.meta.coeval === undefined,
     missingWords: names.map((name) => request.missingWords(name)),
     where,
     typed: true,
@@ -68,14 +69,20 @@ export function readEcsv(given: Uint8Array, request: ReadRequest): RawTable {
     description: c.description,
     ucd: c.ucd,
   }));
-  const masked = applyMasks(columns, header.meta);
+  const masked = applyMasks(columns, header.serialized);
   return {
     form: `ECSV, ${delimiter === 44 ? 'comma' : 'blank'}-separated`,
     rowCount: read.rowCount,
     columns: masked,
     warnings: [...warnings, ...read.warnings],
-    meta: header.meta,
+    meta: withoutSerialization(header.meta),
   };
+}
+
+/** The keywords without astropy's note on how columns were taken apart, which no longer holds. */
+function withoutSerialization(meta: Readonly<Record<string, unknown>>): Readonly<Record<string, unknown>> {
+  const { __serialized_columns__: _taken, ...rest } = meta;
+  return rest;
 }
 
 function headerLines(bytes: Uint8Array): { yaml: string; next: number } {
@@ -94,43 +101,64 @@ function headerLines(bytes: Uint8Array): { yaml: string; next: number } {
   return { yaml, next: i };
 }
 
-function parseHeader(
-  yaml: string,
-  where: string,
-): { delimiter: string; columns: DeclaredColumn[]; meta: Readonly<Record<string, unknown>> } {
-  const document = parseDocument(yaml, { logLevel: 'silent', schema: 'yaml-1.1', customTags: ['omap', 'binary'] });
-  if (document.errors.length > 0) {
-    throw new Error(`${where}: the ECSV header is not valid YAML: ${document.errors[0].message.split('\n')[0]}`);
-  }
-  const header = plainYaml(document.toJS({ mapAsMap: true, maxAliasCount: 100 })) as Record<string, unknown> | null;
-  const datatype = header?.datatype;
-  if (header === null || typeof header !== 'object' || !Array.isArray(datatype)) {
+interface Header {
+  readonly delimiter: string;
+  readonly columns: readonly DeclaredColumn[];
+  readonly meta: Readonly<Record<string, unknown>>;
+  /** How astropy took columns apart, every scalar as text. */
+  readonly serialized: unknown;
+}
+
+function parseHeader(yaml: string, where: string): Header {
+  // Names and units are texts whatever they look like (a column y is no "yes"); keywords are values.
+  const texts = parseYaml(yaml, 'failsafe', where);
+  const datatype = texts?.datatype;
+  if (texts === null || typeof texts !== 'object' || !Array.isArray(datatype)) {
     throw new Error(`${where}: the ECSV header has no list "datatype" of its columns.`);
   }
-  const delimiter = header.delimiter ?? ' ';
+  const delimiter = texts.delimiter ?? ' ';
   if (delimiter !== ' ' && delimiter !== ',') {
     throw new Error(
       `${where}: the ECSV header declares the delimiter ${quote(String(delimiter))}; the format knows a blank and a comma.`,
     );
   }
   const columns = datatype.map((entry, j) => declaredColumn(entry, j, where));
-  return { delimiter, columns, meta: (header.meta as Record<string, unknown> | undefined) ?? {} };
+  const meta = parseYaml(yaml, 'core', where)?.meta;
+  const serialized = isRecord(texts.meta) ? texts.meta.__serialized_columns__ : undefined;
+  return {
+    delimiter,
+    columns,
+    serialized,
+    meta: isRecord(meta) ? meta : meta === undefined || meta === null ? {} : { meta },
+  };
+}
+
+function parseYaml(yaml: string, schema: 'core' | 'failsafe', where: string): Record<string, unknown> | null {
+  const document = parseDocument(yaml, { logLevel: 'silent', schema, customTags: ['omap'] });
+  if (document.errors.length > 0) {
+    throw new Error(`${where}: the ECSV header is not valid YAML: ${document.errors[0].message.split('\n')[0]}`);
+  }
+  try {
+    return plainYaml(document.toJS({ mapAsMap: true, maxAliasCount: 100 })) as Record<string, unknown> | null;
+  } catch (error) {
+    throw new Error(`${where}: the ECSV header cannot be read: ${(error as Error).message}.`);
+  }
+}
+
+function isRecord(value: unknown): value is Record<string, unknown> {
+  return value !== null && typeof value === 'object' && !Array.isArray(value);
 }
 
 function declaredColumn(entry: unknown, j: number, where: string): DeclaredColumn {
   const column = entry as Record<string, unknown> | null;
-  if (
-    column === null ||
-    typeof column !== 'object' ||
-    (typeof column.name !== 'string' && typeof column.name !== 'number')
-  ) {
+  if (column === null || typeof column !== 'object' || typeof column.name !== 'string') {
     throw new Error(`${where}: column ${j + 1} of the ECSV header has no name.`);
   }
-  const meta = (column.meta ?? {}) as Record<string, unknown>;
+  const meta = isRecord(column.meta) ? column.meta : {};
   const ucdKey = Object.keys(meta).find((key) => key.toLowerCase() === 'ucd');
   const text = (value: unknown) => (value === undefined || value === null ? '' : String(value));
   return {
-    name: String(column.name),
+    name: column.name,
     datatype: text(column.datatype),
     subtype: text(column.subtype),
     unit: text(column.unit),
@@ -169,12 +197,11 @@ function plainYaml(value: unknown): unknown {
 }
 
 /** Masks that astropy wrote as boolean columns: their rows become missing, the mask columns go. */
-function applyMasks(columns: readonly RawColumn[], meta: Readonly<Record<string, unknown>>): RawColumn[] {
-  const serialized = meta.__serialized_columns__ as Record<string, Record<string, unknown>> | undefined;
-  if (!serialized || typeof serialized !== 'object') return [...columns];
+function applyMasks(columns: readonly RawColumn[], serialized: unknown): RawColumn[] {
+  if (!isRecord(serialized)) return [...columns];
   const drop = new Set<string>();
   const replaced = new Map<string, ColumnValues>();
-  for (const entry of Object.values(serialized)) {
+  for (const entry of Object.values(serialized) as (Record<string, unknown> | null)[]) {
     const data = nameOf(entry?.data);
     const mask = nameOf(entry?.mask);
     const values = columns.find((c) => c.name === data)?.values;

@@ -60,13 +60,14 @@ export async function readCatalogue(
   if (options.format !== undefined)
     checkChoice(caller, 'format', options.format, Object.keys(READERS) as CatalogueFormat[]);
   if (options.badCells !== undefined) checkChoice(caller, 'badCells', options.badCells, ['error', 'missing']);
+  checkMissing(caller, options.missing);
   const { bytes, title } = await bytesOf(caller, source);
   const where = `${caller}: ${title}`;
   if (bytes.length === 0) throw new Error(`${where}: the file is empty.`);
   const packed = isGzip(bytes);
   const content = checkTextBytes(packed ? await gunzip(bytes, where) : bytes, where);
   if (content.length === 0) throw new Error(`${where}: the file is empty.`);
-  const format = options.format ?? (isEcsv(content) ? 'ecsv' : 'csv');
+  const format = options.format ?? (isEcsv(content) ? 'ecsv' : /\.(?:tsv|tab)(?:\.gz)?$/i.test(title) ? 'tsv' : 'csv');
   const request: ReadRequest = {
     where,
     badCells: options.badCells ?? 'error',
@@ -107,11 +108,19 @@ function checkColumnOptions(where: string, raw: RawTable, options: ReadCatalogue
   for (const name of options.text ?? []) check('text', name);
   for (const name of Object.values(options.roles ?? {})) check('roles', name);
   if (options.missing && !Array.isArray(options.missing)) {
-    for (const [name, values] of Object.entries(options.missing)) {
-      if (name !== '*') check('missing', name);
-      if (!Array.isArray(values)) {
-        throw new TypeError(`${where}: missing.${name} must be a list such as [99.999], got ${describe(values)}.`);
-      }
-    }
+    for (const name of Object.keys(options.missing)) if (name !== '*') check('missing', name);
+  }
+}
+
+function checkMissing(caller: string, missing: MissingValues | undefined): void {
+  if (missing === undefined || Array.isArray(missing)) return;
+  if (missing === null || typeof missing !== 'object') {
+    throw new TypeError(
+      `${caller}: missing must be a list, or a list a column as in { v_mag: [99.999] }, got ${describe(missing)}.`,
+    );
+  }
+  for (const [name, values] of Object.entries(missing)) {
+    if (Array.isArray(values)) continue;
+    throw new TypeError(`${caller}: missing.${name} must be a list such as [99.999], got ${describe(values)}.`);
   }
 }

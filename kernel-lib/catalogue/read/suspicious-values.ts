@@ -1,5 +1,6 @@
 import type { ColumnData } from '../columns';
 import type { Role } from '../roles';
+import { optionKey } from './delimited-columns';
 
 /** Values that tables use for "no value". */
 const SENTINELS: ReadonlySet<number> = new Set([
@@ -20,7 +21,7 @@ export function suspiciousValues(columns: readonly ColumnData[], roleOf: Readonl
     if (found.length === 0) continue;
     const list = found.map(({ value, count }) => `${value} in ${count} ${count === 1 ? 'row' : 'rows'}`).join(', ');
     sentences.push(
-      `Column "${column.name}" (${role}) holds ${list}: ${reason(role, found)}. If that means that there is no value, read with missing: { ${JSON.stringify(column.name)}: [${found.map((f) => f.value).join(', ')}] }.`,
+      `Column "${column.name}" (${role}) holds ${list}: ${reason(role, found)}. If that means that there is no value, read with missing: { ${optionKey(column.name)}: [${found.map((f) => f.value).join(', ')}] }.`,
     );
   }
   return sentences;

@@ -24,14 +24,14 @@ export function* delimitedRows(
   const encoder = new TextEncoder();
   const { delimiter, booleans } = style;
   const alone = columns.length === 1;
-  let text = `${columns.map((c) => quoted(c.name, delimiter, true)).join(delimiter)}\n`;
+  let text = `${columns.map((c) => quoted(c.name, true)).join(delimiter)}\n`;
   for (let i = 0; i < rowCount; i++) {
     for (let j = 0; j < columns.length; j++) {
       if (j > 0) text += delimiter;
       const { values } = columns[j];
       const v = values[i];
       if (typeof v === 'number') text += numberCell(v, alone);
-      else if (typeof v === 'string') text += quoted(v, delimiter, false);
+      else if (typeof v === 'string') text += quoted(v, false);
       // A line with nothing on it would be passed over.
       else if (v === null) text += alone ? '\\N' : '';
       else text += booleans[v ? 1 : 0];
@@ -52,10 +52,10 @@ function numberCell(v: number, alone: boolean): string {
   return Object.is(v, -0) ? '-0' : String(v);
 }
 
-function quoted(text: string, delimiter: string, isName: boolean): string {
+/** Quoted where it must be, also for the separators of other tables, so that the separator can be told from the text. */
+function quoted(text: string, isName: boolean): string {
   const plain =
-    !text.includes(delimiter) &&
-    !/["\r\n]|^\s|\s$|^#/.test(text) &&
+    !/[",;|\t\r\n]|^\s|\s$|^#/.test(text) &&
     !isNumberText(text) &&
     (isName ? text !== '' : !isMissingWord(text.toLowerCase()));
   return plain ? text : `"${text.replaceAll('"', '""')}"`;
