@@ -114,16 +114,16 @@ const PREFIXES: Readonly<Record<string, number>> = {
   q: -30,
 };
 
-interface Symbol_ {
+interface Factor {
   readonly mantissa: number;
   readonly exponent: number;
   readonly dimensions: Readonly<Record<string, number>>;
 }
 
-const SYMBOLS: ReadonlyMap<string, Symbol_> = makeSymbols();
+const SYMBOLS: ReadonlyMap<string, Factor> = makeSymbols();
 
-function makeSymbols(): Map<string, Symbol_> {
-  const symbols = new Map<string, Symbol_>();
+function makeSymbols(): Map<string, Factor> {
+  const symbols = new Map<string, Factor>();
   for (const [name, mantissa, exponent, dimensions, , others] of DEFINITIONS) {
     for (const word of [name, ...others]) symbols.set(word, { mantissa, exponent, dimensions });
   }
@@ -168,13 +168,15 @@ export function parseUnit(text: string): Unit {
   return unitOf(text, new UnitReader(magnitudeOf ? magnitudeOf[1] : trimmed, text).read(), false);
 }
 
-function unitOf(text: string, symbol: Symbol_, logarithmic: boolean): Unit {
+function unitOf(text: string, symbol: Factor, logarithmic: boolean): Unit {
   return { text, ...symbol, logarithmic };
 }
 
 /** Recursive descent over one unit text. */
 class UnitReader {
   #at = 0;
+  /** A unit may follow a number without a sign between: 10+3m. */
+  #afterNumber = false;
   readonly #text: string;
   readonly #whole: string;
 
@@ -183,15 +185,15 @@ class UnitReader {
     this.#whole = whole;
   }
 
-  read(): Symbol_ {
+  read(): Factor {
     const product = this.#product();
     if (this.#at < this.#text.length) throw this.#unknown(this.#text.slice(this.#at));
     return product;
   }
 
-  #product(): Symbol_ {
+  #product(): Factor {
     this.#blanks();
-    let result: Symbol_ = { mantissa: 1, exponent: 0, dimensions: {} };
+    let result: Factor = { mantissa: 1, exponent: 0, dimensions: {} };
     let sign = 1;
     if (this.#take('/')) sign = -1;
     result = combine(result, this.#factor(), sign);
@@ -201,7 +203,7 @@ class UnitReader {
       if (c === undefined || c === ')') return result;
       if (c === '/') sign = -1;
       else if (c === '.' || c === '·' || (c === '*' && this.#text[this.#at + 1] !== '*')) sign = 1;
-      else if (hadBlank || c === '(') {
+      else if (hadBlank || c === '(' || this.#afterNumber) {
         result = combine(result, this.#factor(), 1);
         continue;
       } else throw this.#unknown(this.#text.slice(this.#at));
@@ -210,8 +212,9 @@ class UnitReader {
     }
   }
 
-  #factor(): Symbol_ {
+  #factor(): Factor {
     this.#blanks();
+    this.#afterNumber = false;
     const rest = this.#text.slice(this.#at);
     if (this.#take('(')) {
       const inner = this.#product();
@@ -228,11 +231,13 @@ class UnitReader {
     const tenTo = /^10\s*(?:\*\*|\^|(?=[+-]\d))\s*\(?([+-]?\d+)\)?/.exec(rest);
     if (tenTo) {
       this.#at += tenTo[0].length;
+      this.#afterNumber = true;
       return { mantissa: 1, exponent: Number(tenTo[1]), dimensions: {} };
     }
     const number = /^\d+(?:\.\d+)?(?:[eE][+-]?\d+)?/.exec(rest);
     if (number) {
       this.#at += number[0].length;
+      this.#afterNumber = true;
       return scaled(Number(number[0]));
     }
     const word = /^(?:'(\p{L}[^']*)'|[\p{L}_%°"″′]+|''|')/u.exec(rest);
@@ -275,13 +280,13 @@ class UnitReader {
 }
 
 /** A number as mantissa and power of ten, so that 1000 is exactly 10^3. */
-function scaled(value: number): Symbol_ {
+function scaled(value: number): Factor {
   const text = value.toExponential();
   const at = text.indexOf('e');
   return { mantissa: Number(text.slice(0, at)), exponent: Number(text.slice(at + 1)), dimensions: {} };
 }
 
-function power(symbol: Symbol_, p: number): Symbol_ {
+function power(symbol: Factor, p: number): Factor {
   if (p === 1) return symbol;
   const exponent = symbol.exponent * p;
   const wholePart = Math.trunc(exponent);
@@ -293,7 +298,7 @@ function power(symbol: Symbol_, p: number): Symbol_ {
   };
 }
 
-function combine(a: Symbol_, b: Symbol_, sign: number): Symbol_ {
+function combine(a: Factor, b: Factor, sign: number): Factor {
   const dimensions: Record<string, number> = { ...a.dimensions };
   for (const [k, v] of Object.entries(b.dimensions)) {
     const sum = (dimensions[k] ?? 0) + sign * v;

@@ -31,7 +31,9 @@ export function assembleCatalogue(raw: RawTable, request: AssembleRequest): Cata
   const warnings = [...raw.warnings];
   const notes: string[] = [];
   const columns = raw.columns.map((c) => declareMissing(c, request, notes));
-  const recognised = recogniseRoles(columns.map((c) => ({ name: c.name, kind: kindOf(c.values), ucd: c.ucd })));
+  const recognised = recogniseRoles(
+    columns.map((c) => ({ name: c.name, kind: kindOf(c.values), ucd: c.ucd, unit: c.unit })),
+  );
   const roles = settleRoles(columns, recognised, saved, request, warnings);
   const roleOf = new Map(Object.entries(roles).map(([role, name]) => [name, role as Role]));
   const assumed: string[] = [];

@@ -1,5 +1,6 @@
 import { BAND_NAMES } from '../../quantity/band';
-import { type BaseRole, isRole, PLAIN_ROLES, type Role, type Roles } from '../roles';
+import { isKnownUnit, parseUnit, unitConversion } from '../../quantity/units';
+import { type BaseRole, isRole, PLAIN_ROLES, type Role, type Roles, unitOfRole } from '../roles';
 import { DOUBTFUL, roleOfName, splitBracketUnit } from './role-names';
 import { roleOfUcd } from './role-ucds';
 
@@ -9,6 +10,8 @@ export interface NamedColumn {
   readonly kind: 'number' | 'text' | 'boolean';
   /** IVOA UCD1+ word, '' where unknown. */
   readonly ucd?: string;
+  /** Unit as the file gives it, '' where unknown; a name is not believed against it. */
+  readonly unit?: string;
 }
 
 /** A role that was not settled, and the columns that may carry it. */
@@ -73,6 +76,7 @@ export function recogniseRoles(columns: readonly NamedColumn[]): RecognisedRoles
     }
     if (byName !== null && fits(byName.base)) {
       const role: Role = byName.isError ? `${byName.base}.error` : byName.base;
+      if (!unitFits(column, role)) continue;
       add(role, { column: column.name, by: 'name', rank: byName.rank, unit: byName.unit });
     }
   }
@@ -115,20 +119,41 @@ export function recogniseRoles(columns: readonly NamedColumn[]): RecognisedRoles
 function settleDoubtful(columns: readonly NamedColumn[], candidates: Map<Role, Candidate[]>, open: OpenRole[]): void {
   const stems = new Set(columns.map((c) => splitBracketUnit(c.name).stem));
   const has = (...names: string[]) => names.some((n) => stems.has(n));
-  const otherSystem =
+  const sloan =
     (has('g', 'gmag', 'g_mag') && has('r', 'rmag', 'r_mag')) || has('z', 'zmag', 'z_mag', 'i', 'imag', 'i_mag');
+  const gaia = candidates.has('magnitude.BP') || candidates.has('magnitude.RP') || candidates.has('colour.BP-RP');
+  const johnson = candidates.has('magnitude.B') && candidates.has('magnitude.V');
+  // b and y are Stromgren's, l and b the Galactic coordinates.
+  const small = has('b') && has('v') && !has('y', 'l');
+  const infrared = ['j', 'h', 'k'].filter((n) => has(n)).length > 1;
+  const company: Readonly<Partial<Record<Role, boolean>>> = {
+    'magnitude.G': gaia && !sloan,
+    'magnitude.U': johnson && !sloan,
+    'magnitude.B': small,
+    'magnitude.V': small,
+    'magnitude.J': infrared,
+    'magnitude.H': infrared,
+    'magnitude.Ks': infrared,
+  };
   for (const column of columns) {
-    if (column.kind !== 'number') continue;
     const { stem, unit } = splitBracketUnit(column.name);
-    if (!Object.hasOwn(DOUBTFUL, stem)) continue;
+    if (column.kind !== 'number' || !Object.hasOwn(DOUBTFUL, stem)) continue;
     for (const role of DOUBTFUL[stem]) {
-      if (candidates.has(role)) continue;
-      const gaia = candidates.has('magnitude.BP') || candidates.has('magnitude.RP') || candidates.has('colour.BP-RP');
-      const johnson = candidates.has('magnitude.B') && candidates.has('magnitude.V');
-      const settled = !otherSystem && ((role === 'magnitude.G' && gaia) || (role === 'magnitude.U' && johnson));
-      if (settled) candidates.set(role, [{ column: column.name, by: 'name', rank: 1, unit }]);
-      else open.push({ role, candidates: [column.name], why: 'the name is used for bands of several systems' });
+      if (candidates.has(role) || !unitFits(column, role)) continue;
+      if (company[role] === true) candidates.set(role, [{ column: column.name, by: 'name', rank: 1, unit }]);
+      else open.push({ role, candidates: [column.name], why: 'the name is used for several things' });
     }
+  }
+}
+
+function unitFits(column: NamedColumn, role: Role): boolean {
+  const unit = (column.unit ?? '') || splitBracketUnit(column.name).unit;
+  if (unit === '' || unitOfRole(role) === '' || !isKnownUnit(unit)) return true;
+  try {
+    // A column without unit may still be what its name says.
+    return Object.keys(parseUnit(unit).dimensions).length === 0 || unitConversion(unit, unitOfRole(role)) !== null;
+  } catch {
+    return false;
   }
 }
 
