@@ -2,7 +2,7 @@
  * Counts out of vitest's JSON report.
  * @param report parsed report, or null when vitest wrote none
  * @param status vitest's exit status
- * @returns { passed, failed, skipped }; a file that could not be loaded, a run that broke and a run without tests count as failed
+ * @returns an object { passed, failed, skipped }; a file that could not be loaded, a run that broke and a run without tests count as failed
  */
 export function countsOf(report, status) {
   if (report === null) return { passed: 0, failed: 1, skipped: 0 };

@@ -21,7 +21,7 @@ const listed = Object.keys(options)
 /**
  * Reads the command line of `npm start`.
  * @param words after `npm start --`
- * @returns { help, lab, catalogue } with catalogue null when none was given
+ * @returns an object { help, lab, catalogue } with catalogue null when none was given
  * @throws Problem on an unknown option or more than one catalogue
  */
 export function readArguments(words) {

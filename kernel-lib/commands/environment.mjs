@@ -25,6 +25,8 @@ export function jupyterEnvironment(base = process.env) {
     JUPYTERLAB_SETTINGS_DIR: join(folder, 'lab-settings'),
     JUPYTERLAB_WORKSPACES_DIR: join(folder, 'lab-workspaces'),
     IPYTHONDIR: join(folder, 'ipython'),
+    // JupyterLab asks npm for its folders, and npm writes a log whenever it is asked.
+    npm_config_cache: join(setUpFolder, 'npm'),
     PYTHONNOUSERSITE: '1',
     PYTHONUNBUFFERED: '1',
   };
@@ -44,4 +46,15 @@ export function pipEnvironment(base = process.env) {
   delete env.PIP_PREFIX;
   delete env.PIP_REQUIRE_VIRTUALENV;
   return env;
+}
+
+/**
+ * Environment for npm: its cache is used where there is one, and none is begun in a home that has none.
+ * @returns an object { env, ownCache } with ownCache the folder to remove afterwards, or null
+ */
+export function npmEnvironment(base = process.env) {
+  const cache = base.npm_config_cache ?? join(base.HOME ?? homedir(), '.npm');
+  if (existsSync(join(cache, '_cacache'))) return { env: base, ownCache: null };
+  const ownCache = join(setUpFolder, 'npm-once');
+  return { env: { ...base, npm_config_cache: ownCache }, ownCache };
 }

@@ -17,7 +17,10 @@ export const readNotebook = (path) => JSON.parse(readFileSync(path, 'utf8'));
 export class CellFailure extends Error {
   constructor({ number, heading, reason, output }) {
     super(`cell ${number} (${heading}) failed: ${reason}`);
-    Object.assign(this, { number, heading, reason, output });
+    this.number = number;
+    this.heading = heading;
+    this.reason = reason;
+    this.output = output;
   }
 }
 
@@ -51,7 +54,7 @@ function follow(cells, progress, isTerminal) {
 
 /**
  * Runs a notebook in the real kernel and writes it, with its outputs, to `output` (which may be the same file).
- * @returns { notebook, elapsed } the executed notebook, parsed, and how long it took
+ * @returns an object { notebook, elapsed } the executed notebook, parsed, and how long it took
  * @throws CellFailure when a cell failed, Problem when the run could not go on; `output` is written in both cases
  */
 export async function executeNotebook(source, output, { progress, isTerminal = process.stdout.isTTY === true }) {

@@ -38,7 +38,7 @@ export function cannotWrite(error, folder) {
 /**
  * Writes a new notebook beside the catalogue under the first free name: stem, stem-2, stem-3 ... A name counts as taken when
  * there is a notebook or a report of that name.
- * @returns { notebook, report } full paths; the report is not made here
+ * @returns an object { notebook, report } full paths; the report is not made here
  */
 export function writeNewNotebook(catalogue, content) {
   const folder = dirname(catalogue);

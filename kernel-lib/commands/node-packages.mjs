@@ -1,6 +1,6 @@
-import { existsSync, readFileSync } from 'node:fs';
+import { existsSync, readFileSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
-import { setUpFolder } from './environment.mjs';
+import { npmEnvironment, setUpFolder } from './environment.mjs';
 import { inRoot, root } from './paths.mjs';
 import { Problem } from './problem.mjs';
 import { runProgram } from './run-program.mjs';
@@ -35,7 +35,9 @@ export async function installNodePackages(progress) {
   const log = join(setUpFolder, 'npm.log');
   const npm = process.env.npm_execpath?.endsWith('.js') ? [process.execPath, process.env.npm_execpath] : ['npm'];
   const options = ['ci', '--ignore-scripts', '--include=dev', '--no-audit', '--no-fund', '--loglevel=error'];
-  const run = await runProgram(npm[0], [...npm.slice(1), ...options], { cwd: root, log });
+  const { env, ownCache } = npmEnvironment();
+  const run = await runProgram(npm[0], [...npm.slice(1), ...options], { cwd: root, env, log });
+  if (ownCache !== null) rmSync(ownCache, { recursive: true, force: true });
   if (run.status !== 0) {
     throw new Problem(`npm could not install the node packages; its last lines (all of them: ${log}):\n${run.tail}`);
   }

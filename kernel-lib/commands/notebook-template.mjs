@@ -31,7 +31,7 @@ const completeness = (roles, { magnitude, parts }) =>
 /**
  * The photometry that the analysis will use.
  * @param roles role to column
- * @returns { colour, magnitude, parts }; the first complete one, else the one of which most is there
+ * @returns an object { colour, magnitude, parts }; the first complete one, else the one of which most is there
  */
 export function choosePhotometry(roles) {
   const complete = photometries.find((one) => has(roles, `magnitude.${one.magnitude}`) && hasColour(roles, one));

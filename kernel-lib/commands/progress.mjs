@@ -10,7 +10,7 @@ export function duration(seconds) {
  * Lines that tell how far a command is. On a terminal `update` rewrites one line; elsewhere (a log) it prints a line at most
  * every ten seconds, so that a log shows that work goes on and is not flooded.
  * @param stream where to write, process.stdout by default
- * @returns { line, update, end }; `line` prints for good, `end` leaves the last update standing or clears it
+ * @returns an object { line, update, end }; `line` prints for good, `end` leaves the last update standing or clears it
  */
 export function createProgress(stream = process.stdout) {
   let open = false;
@@ -28,7 +28,7 @@ export function createProgress(stream = process.stdout) {
     update(text) {
       if (stream.isTTY) {
         clear();
-        stream.write(text.slice(0, (stream.columns ?? 80) - 1));
+        stream.write(text.slice(0, (stream.columns || 80) - 1));
         open = true;
       } else if (Date.now() - last > pause) {
         last = Date.now();

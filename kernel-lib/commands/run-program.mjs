@@ -5,7 +5,7 @@ import { createInterface } from 'node:readline';
 
 /**
  * Runs a program to its end, both its streams going line by line to `onLine` and to a log file.
- * @returns { status, tail } with the last 12 lines printed; status 127 when the program could not be started
+ * @returns an object { status, tail } with the last 12 lines printed; status 127 when the program could not be started
  */
 export function runProgram(program, parameters, { cwd, env = process.env, log, onLine = () => {} } = {}) {
   return new Promise((resolve) => {
