@@ -127,8 +127,9 @@ async function buildAll(say, types) {
 
 /**
  * Builds kernel-lib/dist from the sources; does nothing when sources and lock file are those of the last build.
- * @param options.say   receives a line for each step that has to be done
- * @param options.types write declarations too; without them the next build starts again
+ * @param {object} [options]
+ * @param {(line: string) => void} [options.say] receives a line for each step that has to be done
+ * @param {boolean} [options.types] write declarations too (default); without them the next build starts again
  * @returns true when something was built
  * @throws BuildError when the sources cannot be bundled or have type errors
  */

@@ -1,14 +1,7 @@
 import { existsSync, lstatSync, mkdirSync, realpathSync, rmSync, symlinkSync } from 'node:fs';
-import { createRequire } from 'node:module';
 import { dirname, join } from 'node:path';
 import { cannotWrite } from './new-notebook.mjs';
 import { inRoot } from './paths.mjs';
-
-const packages = () => ({
-  coeval: inRoot('kernel-lib'),
-  // Types of a cell's variables may come from arquero, and the compiler must then be able to name it from that folder.
-  arquero: dirname(createRequire(inRoot('kernel-lib', 'package.json')).resolve('arquero/package.json')),
-});
 
 /** Folder of the package that an import in `folder` would find, or null. Looked up by folders, as a compiler does. */
 function found(folder, name) {
@@ -26,28 +19,21 @@ function removeDeadLink(place) {
 }
 
 /**
- * Makes `import ... from 'coeval'` work in notebooks of a folder, by links in a node_modules beside them.
+ * Makes `import ... from 'coeval'` work in notebooks of a folder, by a link in a node_modules beside them.
  * @returns lines to tell the user; empty when there was nothing to do
  */
 export function linkLibrary(folder) {
-  const lines = [];
-  for (const [name, target] of Object.entries(packages())) {
-    const present = found(folder, name);
-    if (present !== null) {
-      if (name === 'coeval' && present !== realpathSync(target))
-        lines.push(`Notebooks in ${folder} use the coeval of ${present}.`);
-      continue;
-    }
-    const place = join(folder, 'node_modules', name);
-    try {
-      mkdirSync(dirname(place), { recursive: true });
-      removeDeadLink(place);
-      symlinkSync(target, place, 'dir');
-    } catch (error) {
-      throw cannotWrite(error, folder);
-    }
-    if (name === 'coeval')
-      lines.push(`Linked ${place} to this library, so that notebooks in that folder can import it.`);
+  const library = realpathSync(inRoot('kernel-lib'));
+  const present = found(folder, 'coeval');
+  if (present === library) return [];
+  if (present !== null) return [`Notebooks in ${folder} use the coeval of ${present}.`];
+  const place = join(folder, 'node_modules', 'coeval');
+  try {
+    mkdirSync(dirname(place), { recursive: true });
+    removeDeadLink(place);
+    symlinkSync(library, place, 'dir');
+  } catch (error) {
+    throw cannotWrite(error, folder);
   }
-  return lines;
+  return [`Linked ${place} to this library, so that notebooks in that folder can import it.`];
 }

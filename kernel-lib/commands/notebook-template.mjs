@@ -170,6 +170,9 @@ function cellsFor(settings) {
   ];
 }
 
+const defaultIntroduction =
+  'From the field catalogue to the age of the cluster. Every step can be changed; run the cells below it again then.';
+
 const toCell = ({ type, source }, index) => ({
   cell_type: type,
   id: `coeval-${String(index + 1).padStart(2, '0')}`,
@@ -180,25 +183,21 @@ const toCell = ({ type, source }, index) => ({
 
 /**
  * A notebook of the whole way from a field catalogue to an age.
- * @param options.title        heading, also the name of the cluster in the result
- * @param options.source       path of the catalogue as the notebook's cells name it
- * @param options.introduction markdown under the heading
- * @param options.roles        role to column, as recognised
- * @param options.columns      every column of the catalogue; null when the file says all by itself and no roles are to be listed
- * @param options.warnings     what the reader found odd, a sentence each
- * @param options.metallicity  [Fe/H], dex
+ * @param {object} settings
+ * @param {string} settings.title heading, also the name of the cluster in the result
+ * @param {string} settings.source path of the catalogue as the notebook's cells name it
+ * @param {string} [settings.introduction] markdown under the heading
+ * @param {Record<string, string>} [settings.roles] role to column, as recognised
+ * @param {string[] | null} [settings.columns] every column of the catalogue; null (default) when the file says all by itself
+ *   and no roles are to be listed
+ * @param {string[]} [settings.warnings] what the reader found odd, a sentence each
+ * @param {number} [settings.metallicity] [Fe/H], dex; default 0
  * @returns nbformat 4.5 JSON without outputs
  * @example notebookFor({ title: 'My cluster', source: 'field.csv', roles: { parallax: 'plx' }, columns: ['plx', 'g'] })
  */
-export function notebookFor({
-  title,
-  source,
-  introduction = 'From the field catalogue to the age of the cluster. Every step can be changed; run the cells below it again then.',
-  roles = {},
-  columns = null,
-  warnings = [],
-  metallicity = 0,
-}) {
+export function notebookFor(settings) {
+  const { title, source, introduction = defaultIntroduction, roles = {}, columns = null } = settings;
+  const { warnings = [], metallicity = 0 } = settings;
   const cells = cellsFor({ title, source, introduction, roles, columns, warnings, metallicity });
   return {
     cells: cells.map(toCell),
