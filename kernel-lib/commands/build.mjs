@@ -1,5 +1,5 @@
 import { spawnSync } from 'node:child_process';
-import { existsSync, mkdirSync, readdirSync, renameSync, rmSync } from 'node:fs';
+import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync } from 'node:fs';
 import { basename, dirname, join, relative } from 'node:path';
 import { pathToFileURL } from 'node:url';
 import { withLock } from './lock.mjs';
@@ -53,11 +53,34 @@ const browserRules = {
   },
 };
 
-/** Bundles the browser face into one ES module that needs nothing else; fails on any import of Node. */
-export async function bundleForBrowser(entry, outfile) {
+/** Rooms that need Node or the kernel; all others are pure and run in a browser as well. */
+const impureRooms = ['notebook', 'report'];
+
+/**
+ * The public face without the rooms that are not pure, so that there is one list of exports and not two.
+ * @param {string} index text of index.ts: re-exports, one room's file each
+ * @returns TypeScript that re-exports what the pure rooms give
+ */
+export function browserFace(index) {
+  const reExports = index.matchAll(/^export\s+(?:type\s+)?(?:\{[^}]*\}|\*)\s+from\s+'\.\/([^/']+)[^']*';/gm);
+  return [...reExports]
+    .filter(([, room]) => !impureRooms.includes(room))
+    .map(([statement]) => statement)
+    .join('\n');
+}
+
+/**
+ * Bundles for browsers, into one ES module that needs nothing else.
+ * @param {string} contents TypeScript to begin with
+ * @param {string} folder where its imports start from
+ * @param {string} outfile
+ * @param {'warning' | 'silent'} [logLevel] what is printed
+ * @throws on any import of Node
+ */
+export async function bundleForBrowser(contents, folder, outfile, logLevel = 'warning') {
   const { build } = await import('esbuild');
   await build({
-    entryPoints: [entry],
+    stdin: { contents, resolveDir: folder, sourcefile: 'browser.ts', loader: 'ts' },
     outfile,
     bundle: true,
     platform: 'browser',
@@ -65,7 +88,7 @@ export async function bundleForBrowser(entry, outfile) {
     target: 'es2022',
     sourcemap: true,
     plugins: [browserRules],
-    logLevel: 'warning',
+    logLevel,
   });
 }
 
@@ -111,8 +134,8 @@ async function buildAll(say, types) {
   try {
     say('Bundling the library');
     await bundleForNode(next);
-    const browserEntry = join(library, 'browser.ts');
-    if (existsSync(browserEntry)) await bundleForBrowser(browserEntry, join(next, 'browser', 'coeval.mjs'));
+    const face = browserFace(readFileSync(join(library, 'index.ts'), 'utf8'));
+    await bundleForBrowser(face, library, join(next, 'browser', 'coeval.mjs'));
     // Code is put in place before types are checked: a type error stops the build, yet a notebook can be tried.
     moveInto(next, dist);
     if (!types) return;
