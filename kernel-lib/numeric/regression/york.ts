@@ -66,7 +66,7 @@ export function yorkInto(
   rows: Uint32Array | null,
   count: number,
   out: Float64Array,
-  startSlope = Number.NaN,
+  startSlope: number = Number.NaN,
 ): boolean {
   let b = Number.isNaN(startSlope) ? ordinarySlope(x, y, rows, count) : startSlope;
   let sumW = 0;
