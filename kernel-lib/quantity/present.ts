@@ -16,7 +16,11 @@ const INSPECT: unique symbol = Symbol.for('nodejs.util.inspect.custom') as never
 const PRESENTER: unique symbol = Symbol.for('coeval.presenter') as never;
 
 /** What the notebook room installs: given a shown object, emits a rich output and returns what the console prints. */
-export type Presenter = (shown: object, presentation: Presentation) => string;
+export interface Presenter {
+  (shown: object, presentation: Presentation): string;
+  /** What an object inside another one prints; without it, its text. */
+  nested?(shown: object, presentation: Presentation): string;
+}
 
 /** Sets (or with null removes) the presenter. Kept on globalThis so that two copies of the library share one. */
 export function setPresenter(presenter: Presenter | null): void {
@@ -41,7 +45,8 @@ export function attachPresentation(target: object, presentation: Presentation): 
       // A depth below the starting one means that the object sits inside another one: no rich output of its own then.
       const nested = options != null && options.depth != null && depth < options.depth;
       const presenter = (globalThis as Record<symbol, unknown>)[PRESENTER] as Presenter | null | undefined;
-      return presenter == null || nested ? presentation.text() : presenter(target, presentation);
+      if (nested) return presenter?.nested?.(target, presentation) ?? presentation.text();
+      return presenter == null ? presentation.text() : presenter(target, presentation);
     },
   });
   if (!Object.hasOwn(target, 'toString')) {
