@@ -37,7 +37,7 @@ describe('bad input is a clear error', () => {
     ['UTF-16, little end first', utf16('ra,dec\n1,2\n', true), /UTF-16 text. Save it as UTF-8/],
     ['UTF-16, big end first', utf16('ra,dec\n1,2\n', true, true), /UTF-16 text. Save it as UTF-8/],
     ['UTF-16 without mark', utf16('ra,dec\n1,2\n', false), /looks like UTF-16/],
-    ['Latin-1 text cell', latin1('name,ra\nx,1\nÉtoile,2\n'), /column "name", row 2: bytes that are not UTF-8/],
+    ['Latin-1 text cell', latin1('name,ra\nx,1\nÉtoile,2\n'), /line 3, column "name": bytes that are not UTF-8/],
     ['Latin-1 column name', latin1('étoile,ra\n1,1\n'), /line 1: the column names are not UTF-8/],
     ['binary', Uint8Array.from({ length: 300 }, (_, i) => (i * 37) % 256), /not a text file \(byte 0x00 at offset 0\)/],
     [
@@ -109,6 +109,10 @@ describe('bad input is a clear error', () => {
     await rejects({ roles: { paralax: 'plx' } }, /unknown role "paralax". Did you mean "parallax"\?/);
     await rejects({ roles: { parallax: 'px' } }, /roles names column "px"/);
     await rejects({ missing: { plx: 99 } }, /missing.plx must be a list such as \[99.999\], got 99/);
+    await rejects({ units: { plx: 3 } }, "units must be like { plx: 'mas' }, got plx: 3");
+    await rejects({ roles: ['plx'] }, "roles must be like { parallax: 'plx' }, got an array of 1");
+    await rejects({ text: 'plx' }, 'text must be a list of column names, got "plx"');
+    await rejects({ missing: 99 }, 'missing must be a list, or a list a column');
     await rejects({ fromat: 'csv' }, /unknown option "fromat". Did you mean "format"\?/);
     await rejects({ format: 'fits' }, /format is "fits"; choose one of csv, tsv, ecsv/);
     await rejects({ columnNames: ['a', 'b'] }, /columnNames has 2 names, the file has 3 columns/);
@@ -200,6 +204,24 @@ describe('values that look like missing ones', () => {
     expect(c.warnings.join('\n')).toContain(
       '"Vmag" (magnitude.V) holds 99.999 in 1 row: beyond what the quantity can be',
     );
+  });
+
+  it('are compared as the file writes them, before units are converted', async () => {
+    const content = column('parallax', [...good.map((v) => v / 1000), -999, -999]);
+    const c = await readCatalogue(content, { units: { parallax: 'arcsec' } });
+    expect(c.warnings.join('\n')).toContain('holds -999 in 2 rows');
+    const declared = await readCatalogue(content, { units: { parallax: 'arcsec' }, missing: { parallax: [-999] } });
+    expect(declared.columns[1].missing).toBe(2);
+  });
+
+  it('positions off the sphere, infinities and parallaxes all negative are told', async () => {
+    const c = await readCatalogue(bytes('ra,dec,parallax,V\n361,95,-1,inf\n1,2,-2,3\n2,-91,,4\n'));
+    const told = c.warnings.join('\n');
+    expect(told).toContain('"ra" (rightAscension) is beyond 360 deg in 1 row');
+    expect(told).toContain('"dec" (declination) is beyond 90 deg in 2 rows');
+    expect(told).toContain('"parallax" (parallax) has no positive value');
+    expect(told).toContain('"V" (magnitude.V) is infinite in 1 row');
+    expect(c.rowCount).toBe(3);
   });
 
   it('leaves alone what belongs to the column', async () => {

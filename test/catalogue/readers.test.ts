@@ -278,6 +278,34 @@ describe('CSV', () => {
     expect(declared.numbers('__proto__')).toEqual(Float64Array.of(-9));
   });
 
+  it('reads positions in hours or degrees, minutes and seconds', async () => {
+    const c = await readCatalogue(
+      bytes('RAJ2000,DEJ2000\n04:30:00,+16 30 36\n04 30 00.0,-00:30:00\n,\n12h00m36s,-10d15m00s\n'),
+    );
+    expect(c.numbers('rightAscension')).toEqual(Float64Array.of(67.5, 67.5, Number.NaN, 180.15));
+    expect(c.numbers('declination')).toEqual(Float64Array.of(16.51, -0.5, Number.NaN, -10.25));
+    expect(c.columns.map((x) => x.unit)).toEqual(['deg', 'deg']);
+    expect(c.history[0].note).toContain('RAJ2000 from hours, minutes and seconds to deg');
+    const degrees = await readCatalogue(bytes('ra,x\n180:30:00,1\n'), { units: { ra: 'deg' } });
+    expect(degrees.numbers('rightAscension')).toEqual(Float64Array.of(180.5));
+    const odd = await readCatalogue(bytes('ra,x\n12:61:00,1\n12:30:00,1\n'));
+    expect(odd.roles).toEqual({});
+    expect(odd.warnings).toEqual([
+      'Role rightAscension is not assigned: column "ra" holds text ("12:61:00"), not numbers.',
+    ]);
+  });
+
+  it('reads a table of ten thousand columns, and gzip in several members', async () => {
+    const names = Array.from({ length: 10_000 }, (_, k) => `c${k}`);
+    const wide = await readCatalogue(bytes(`${names.join(',')}\n${names.map((_, k) => k).join(',')}\n`));
+    expect(wide.numbers('c9999')).toEqual(Float64Array.of(9999));
+    const parts = [await gzip(bytes('a,x\n1,2\n')), await gzip(bytes('3,4\n'))];
+    const both = new Uint8Array(parts[0].length + parts[1].length);
+    both.set(parts[0]);
+    both.set(parts[1], parts[0].length);
+    expect([...(await readCatalogue(both)).numbers('a')]).toEqual([1, 3]);
+  });
+
   it('decides between text and numbers on the whole column', async () => {
     const rows = (n: number, f: (i: number) => string) => Array.from({ length: n }, (_, i) => `${f(i)},0`).join('\n');
     const names = await readCatalogue(bytes(`star,x\n${rows(500, (i) => (i % 2 ? `HD ${i}` : String(i)))}\n`));

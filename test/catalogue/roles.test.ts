@@ -168,7 +168,9 @@ describe('roles by name', () => {
   it('does not believe a name against its unit or its kind', () => {
     expect(recogniseRoles([{ name: 'V', kind: 'number', unit: 'km/s' }]).roles).toEqual({});
     expect(recogniseRoles([{ name: 'b', kind: 'number', unit: 'deg' }]).open).toEqual([]);
-    expect(recogniseRoles([{ name: 'ra', kind: 'text' }]).roles).toEqual({});
+    const text = recogniseRoles([{ name: 'ra', kind: 'text' }]);
+    expect(text.roles).toEqual({});
+    expect(text.open).toEqual([{ role: 'rightAscension', candidates: ['ra'], why: 'it holds text, not numbers' }]);
     expect(recogniseRoles([{ name: 'name', kind: 'text' }]).roles).toEqual({ identifier: 'name' });
   });
 

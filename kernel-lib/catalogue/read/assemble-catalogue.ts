@@ -5,11 +5,14 @@ import { type ColumnData, type ColumnValues, countMissing, kindOf } from '../col
 import { isRole, type Role, unitOfRole } from '../roles';
 import { missingOf } from './declared-missing';
 import { optionKey } from './delimited-columns';
+import { implausibleValues } from './implausible-values';
 import type { RawColumn, RawTable } from './raw-table';
 import type { ReadCatalogueOptions } from './read-catalogue';
 import { type RecognisedRoles, recogniseRoles } from './recognise-roles';
-import { splitBracketUnit } from './role-names';
+import { roleOfName, splitBracketUnit } from './role-names';
+import { roleOfUcd } from './role-ucds';
 import { type SavedState, savedState } from './saved-state';
+import { degreesOf } from './sexagesimal';
 import { suspiciousValues } from './suspicious-values';
 
 /** What assembling a catalogue is told, besides the table. */
@@ -30,7 +33,7 @@ export function assembleCatalogue(raw: RawTable, request: AssembleRequest): Cata
   const saved = savedState(raw);
   const warnings = [...raw.warnings];
   const notes: string[] = [];
-  const columns = raw.columns.map((c) => declareMissing(c, request, notes));
+  const columns = raw.columns.map((c) => inDegrees(declareMissing(c, request, notes), request, notes));
   const recognised = recogniseRoles(
     columns.map((c) => ({ name: c.name, kind: kindOf(c.values), ucd: c.ucd, unit: c.unit })),
   );
@@ -54,13 +57,17 @@ export function assembleCatalogue(raw: RawTable, request: AssembleRequest): Cata
   if (assumed.length > 0) {
     notes.push(`no unit given, taken as Coeval's own: ${assumed.join(', ')}`);
   }
-  warnings.push(...suspiciousValues(data, roleOf), ...missingErrors(roles));
+  warnings.push(
+    ...suspiciousValues(columns, data, roleOf),
+    ...implausibleValues(data, roleOf),
+    ...missingErrors(roles),
+  );
   return new Catalogue({
     source: title,
     rowCount: raw.rowCount,
     columns: data,
     roles,
-    warnings,
+    warnings: [...new Set([...(saved?.warnings ?? []), ...warnings])],
     meta: saved?.meta ?? raw.meta,
     history: [
       ...(saved?.history ?? []),
@@ -90,6 +97,21 @@ function declareMissing(column: RawColumn, request: AssembleRequest, notes: stri
   }
   if (count > 0) notes.push(`${column.name}: ${count} values of ${[...numbers].join(', ')} taken as missing`);
   return { ...column, values: out };
+}
+
+/** Positions written as hours or degrees, minutes and seconds, as degrees. */
+function inDegrees(column: RawColumn, request: AssembleRequest, notes: string[]): RawColumn {
+  const { name, values } = column;
+  if (values instanceof Float64Array || kindOf(values) !== 'text' || request.text?.includes(name)) return column;
+  const given = Object.entries(request.roles ?? {}).find(([, n]) => n === name)?.[0];
+  const base = given ?? roleOfUcd(column.ucd)?.base ?? roleOfName(name)?.base;
+  if (base !== 'rightAscension' && base !== 'declination') return column;
+  const declared = request.units && Object.hasOwn(request.units, name) ? request.units[name] : column.unit;
+  const isHours = base === 'rightAscension' && !/^deg/i.test(declared);
+  const degrees = degreesOf(values as readonly (string | null)[], isHours);
+  if (degrees === null) return column;
+  notes.push(`${name} from ${isHours ? 'hours' : 'degrees'}, minutes and seconds to deg`);
+  return { ...column, values: degrees, unit: 'deg', isSexagesimal: true };
 }
 
 /** The roles by recognition, then what the user said over it. */
@@ -137,6 +159,14 @@ function settleRoles(
   }
   for (const { role, candidates, why } of saved === null ? recognised.open : []) {
     if (roles[role] !== undefined || candidates.every((name) => taken.has(name))) continue;
+    const texts = columns.find((c) => c.name === candidates[0])?.values;
+    if (candidates.length === 1 && texts !== undefined && !(texts instanceof Float64Array)) {
+      const example = String(texts.find((v) => v !== null));
+      warnings.push(
+        `Role ${role} is not assigned: column "${candidates[0]}" holds text (${JSON.stringify(example)}), not numbers.`,
+      );
+      continue;
+    }
     warnings.push(
       `Role ${role} is not assigned: ${candidates.map((c) => `"${c}"`).join(', ')} (${why}). Say it with roles: { ${optionKey(role)}: ${JSON.stringify(candidates[0])} }.`,
     );
@@ -154,6 +184,7 @@ function unitOf(
   const given = request.units ?? {};
   const bracket = splitBracketUnit(column.name).unit;
   const byName = role === undefined ? '' : (recognised.units[role] ?? '');
+  if (column.isSexagesimal) return 'deg';
   const unit = Object.hasOwn(given, column.name) ? given[column.name] : column.unit || byName || bracket;
   try {
     return isNoUnit(unit) ? '' : parseUnit(unit).text.trim();

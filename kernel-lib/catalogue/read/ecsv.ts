@@ -134,12 +134,12 @@ function parseHeader(yaml: string, where: string): Header {
 }
 
 function parseYaml(yaml: string, schema: 'core' | 'failsafe', where: string): Record<string, unknown> | null {
-  const document = parseDocument(yaml, { logLevel: 'silent', schema, customTags: ['omap'] });
-  if (document.errors.length > 0) {
-    throw new Error(`${where}: the ECSV header is not valid YAML: ${document.errors[0].message.split('\n')[0]}`);
+  const parsed = parseDocument(yaml, { logLevel: 'silent', schema, customTags: ['omap'] });
+  if (parsed.errors.length > 0) {
+    throw new Error(`${where}: the ECSV header is not valid YAML: ${parsed.errors[0].message.split('\n')[0]}`);
   }
   try {
-    return plainYaml(document.toJS({ mapAsMap: true, maxAliasCount: 100 })) as Record<string, unknown> | null;
+    return plainYaml(parsed.toJS({ mapAsMap: true, maxAliasCount: 100 })) as Record<string, unknown> | null;
   } catch (error) {
     throw new Error(`${where}: the ECSV header cannot be read: ${(error as Error).message}.`);
   }

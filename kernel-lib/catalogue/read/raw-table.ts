@@ -9,6 +9,8 @@ export interface RawColumn {
   readonly description: string;
   /** IVOA UCD1+ word, '' where the file says nothing. */
   readonly ucd: string;
+  /** Whether its values were degrees, minutes and seconds, and are degrees now. */
+  readonly isSexagesimal?: boolean;
 }
 
 /** What every reader turns bytes into. */

@@ -60,6 +60,7 @@ export async function readCatalogue(
   if (options.format !== undefined)
     checkChoice(caller, 'format', options.format, Object.keys(READERS) as CatalogueFormat[]);
   if (options.badCells !== undefined) checkChoice(caller, 'badCells', options.badCells, ['error', 'missing']);
+  checkShapes(caller, options);
   checkMissing(caller, options.missing);
   const { bytes, title } = await bytesOf(caller, source);
   const where = `${caller}: ${title}`;
@@ -88,8 +89,10 @@ async function bytesOf(
     if (source === '') throw new TypeError(`${caller}: the path is empty.`);
     return { bytes: await readFileBytes(caller, source), title: fileTitle(source) };
   }
-  if (source instanceof Uint8Array) return { bytes: source, title: 'the bytes given' };
-  if (source instanceof ArrayBuffer) return { bytes: new Uint8Array(source), title: 'the bytes given' };
+  // By tag, not by class: bytes may come from another realm, such as a page's frame.
+  const tag = Object.prototype.toString.call(source);
+  if (tag === '[object Uint8Array]') return { bytes: source as Uint8Array, title: 'the bytes given' };
+  if (tag === '[object ArrayBuffer]') return { bytes: new Uint8Array(source as ArrayBuffer), title: 'the bytes given' };
   throw new TypeError(`${caller}: expected a path, a Uint8Array or an ArrayBuffer, got ${describe(source)}.`);
 }
 
@@ -109,6 +112,26 @@ function checkColumnOptions(where: string, raw: RawTable, options: ReadCatalogue
   for (const name of Object.values(options.roles ?? {})) check('roles', name);
   if (options.missing && !Array.isArray(options.missing)) {
     for (const name of Object.keys(options.missing)) if (name !== '*') check('missing', name);
+  }
+}
+
+/** Refuses options of another shape than they have. */
+function checkShapes(caller: string, options: ReadCatalogueOptions): void {
+  for (const option of ['roles', 'units'] as const) {
+    const given = options[option];
+    if (given === undefined) continue;
+    const isRecord = given !== null && typeof given === 'object' && !Array.isArray(given);
+    const wrong = isRecord ? Object.entries(given).find(([, v]) => typeof v !== 'string') : ['', given];
+    if (wrong === undefined) continue;
+    const example = option === 'units' ? "{ plx: 'mas' }" : "{ parallax: 'plx' }";
+    throw new TypeError(
+      `${caller}: ${option} must be like ${example}, got ${wrong[0] === '' ? '' : `${wrong[0]}: `}${describe(wrong[1])}.`,
+    );
+  }
+  for (const option of ['text', 'columnNames'] as const) {
+    const given = options[option];
+    if (given === undefined || (Array.isArray(given) && given.every((name) => typeof name === 'string'))) continue;
+    throw new TypeError(`${caller}: ${option} must be a list of column names, got ${describe(given)}.`);
   }
 }
 

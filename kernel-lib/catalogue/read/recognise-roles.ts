@@ -74,6 +74,15 @@ export function recogniseRoles(columns: readonly NamedColumn[]): RecognisedRoles
         continue;
       }
     }
+    if (column.kind === 'text' && (byUcd ?? byName) !== null && !fits((byUcd ?? byName)?.base as BaseRole)) {
+      const { base, isError } = (byUcd ?? byName) as { base: BaseRole; isError: boolean };
+      open.push({
+        role: isError ? `${base}.error` : base,
+        candidates: [column.name],
+        why: 'it holds text, not numbers',
+      });
+      continue;
+    }
     if (byName !== null && fits(byName.base)) {
       const role: Role = byName.isError ? `${byName.base}.error` : byName.base;
       if (!unitFits(column, role)) continue;

@@ -6,13 +6,14 @@ import type { RawTable } from './raw-table';
 export interface SavedState {
   readonly roles: Readonly<Partial<Record<Role, string>>>;
   readonly history: readonly HistoryStep[];
+  readonly warnings: readonly string[];
   /** The other keywords of the table. */
   readonly meta: Readonly<Record<string, unknown>>;
 }
 
-/** Roles and history that `writeCatalogue` left in the table's keywords, or null. Entries that do not fit are left out. */
+/** Roles, history and warnings that `writeCatalogue` left in the table's keywords, or null. Entries that do not fit are left out. */
 export function savedState(raw: RawTable): SavedState | null {
-  const coeval = raw.meta.coeval as { roles?: unknown; history?: unknown } | undefined;
+  const coeval = raw.meta.coeval as { roles?: unknown; history?: unknown; warnings?: unknown } | undefined;
   if (coeval === undefined || coeval === null || typeof coeval !== 'object') return null;
   const names = new Set(raw.columns.map((c) => c.name));
   const roles: Partial<Record<Role, string>> = {};
@@ -20,8 +21,9 @@ export function savedState(raw: RawTable): SavedState | null {
     if (isRole(role) && typeof name === 'string' && names.has(name)) roles[role] = name;
   }
   const history = Array.isArray(coeval.history) ? coeval.history.filter(isStep) : [];
+  const warnings = Array.isArray(coeval.warnings) ? coeval.warnings.filter((w) => typeof w === 'string') : [];
   const { coeval: _own, ...meta } = raw.meta;
-  return { roles, history: history.map((s) => Object.freeze({ ...s })), meta };
+  return { roles, warnings, history: history.map((s) => Object.freeze({ ...s })), meta };
 }
 
 function isStep(step: unknown): step is HistoryStep {

@@ -10,14 +10,19 @@ const SENTINELS: ReadonlySet<number> = new Set([
 
 /**
  * Sentences about values that look as if they stood for "missing": one exact value far off the rest of its column, or one
- * that the quantity cannot have. Only columns with a role are looked at, since only they have a meaning to judge by.
+ * that the quantity cannot have. `columns` are as read, `converted` the same in Coeval's units. Only columns with a role are looked at, since only they have a meaning to judge by.
  */
-export function suspiciousValues(columns: readonly ColumnData[], roleOf: ReadonlyMap<string, Role>): string[] {
+export function suspiciousValues(
+  columns: readonly ColumnData[],
+  converted: readonly ColumnData[],
+  roleOf: ReadonlyMap<string, Role>,
+): string[] {
   const sentences: string[] = [];
-  for (const column of columns) {
+  for (const [j, column] of columns.entries()) {
     const role = roleOf.get(column.name);
     if (role === undefined || role === 'identifier' || !(column.values instanceof Float64Array)) continue;
-    const found = suspects(column.values, role);
+    // Compared as the file writes them; what a quantity can be is known in Coeval's unit only.
+    const found = suspects(column.values, role, column.values === converted[j].values);
     if (found.length === 0) continue;
     const list = found.map(({ value, count }) => `${value} in ${count} ${count === 1 ? 'row' : 'rows'}`).join(', ');
     sentences.push(
@@ -42,7 +47,7 @@ function reason(role: Role, found: readonly Suspect[]): string {
 /** Values looked at for the spread of a column: enough for quartiles, few enough to sort. */
 const SAMPLE = 4096;
 
-function suspects(values: Float64Array, role: Role): Suspect[] {
+function suspects(values: Float64Array, role: Role, isOwnUnit: boolean): Suspect[] {
   const counts = countSentinels(values);
   if (counts.size === 0) return [];
   // The rest of the column: its ends exactly, its quartiles from evenly spaced rows.
@@ -50,9 +55,12 @@ function suspects(values: Float64Array, role: Role): Suspect[] {
   const sample: number[] = [];
   let low = Number.POSITIVE_INFINITY;
   let high = Number.NEGATIVE_INFINITY;
+  const sentinels = Float64Array.from(counts.keys());
   for (let i = 0; i < values.length; i++) {
     const v = values[i];
-    if (Number.isNaN(v) || counts.has(v)) continue;
+    let isSentinel = false;
+    for (let k = 0; k < sentinels.length; k++) if (v === sentinels[k]) isSentinel = true;
+    if (isSentinel || Number.isNaN(v)) continue;
     if (v < low) low = v;
     if (v > high) high = v;
     if (i % step === 0) sample.push(v);
@@ -62,7 +70,7 @@ function suspects(values: Float64Array, role: Role): Suspect[] {
   const spread = last > 0 ? sorted[Math.floor(0.75 * last)] - sorted[Math.floor(0.25 * last)] : 0;
   const found: Suspect[] = [];
   for (const [value, count] of counts) {
-    const impossible = isImpossible(value, role);
+    const impossible = (isOwnUnit || value <= 0) && isImpossible(value, role);
     const outside = Math.max(low - value, value - high);
     const lonely = last >= 2 && outside > (count > 1 ? Math.max(spread, 2) : Math.max(3 * spread, 5));
     if (impossible || lonely) found.push({ value, count, impossible });

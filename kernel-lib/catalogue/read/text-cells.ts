@@ -1,12 +1,8 @@
 const BLOCK = 1 << 20;
 const MOST_SHARED = 256;
 
-/** Thrown by `TextCells` when bytes are not UTF-8: which cell of the column it was. */
-export class NotUtf8 extends Error {
-  constructor(readonly row: number) {
-    super('not UTF-8');
-  }
-}
+/** Thrown by `TextCells` when bytes are not UTF-8. */
+export class NotUtf8 extends Error {}
 
 /**
  * Collects the cells of a text column as bytes in blocks and decodes a block at once, which is several times faster
@@ -78,7 +74,7 @@ export class TextCells {
     try {
       return new TextDecoder('utf-8', { fatal: true, ignoreBOM: true }).decode(this.#block.subarray(from, end));
     } catch {
-      throw new NotUtf8(this.values.length);
+      throw new NotUtf8('not UTF-8');
     }
   }
 
