@@ -101,6 +101,7 @@ async function bundleForNode(folder) {
   await build({ ...commonJs, entryPoints: names, outdir: folder });
 }
 
+/** Writes the declarations; returns what the compiler has to say against them, or null. */
 function emitTypes(folder) {
   // Not node_modules/.bin/tsc, which is the older compiler of the kernel.
   const compiler = inRoot('node_modules', 'typescript', 'bin', 'tsc');
@@ -114,7 +115,7 @@ function emitTypes(folder) {
     'false',
   ];
   const run = spawnSync(process.execPath, [compiler, ...options], { cwd: root, encoding: 'utf8' });
-  if (run.status !== 0) throw new BuildError(`the library has type errors:\n${run.stdout}${run.stderr}`.trimEnd());
+  return run.status === 0 ? null : `${run.stdout}${run.stderr}`.trimEnd();
 }
 
 /** Moves what was built into dist, file by file, so that whoever reads dist meanwhile never finds it empty. */
@@ -136,13 +137,16 @@ async function buildAll(say, types) {
     await bundleForNode(next);
     const face = browserFace(readFileSync(join(library, 'index.ts'), 'utf8'));
     await bundleForBrowser(face, library, join(next, 'browser', 'coeval.mjs'));
-    // Code is put in place before types are checked: a type error stops the build, yet a notebook can be tried.
     moveInto(next, dist);
     if (!types) return;
     say('Writing the type declarations');
-    emitTypes(next);
-    rmSync(join(dist, 'types'), { recursive: true, force: true });
-    renameSync(join(next, 'types'), join(dist, 'types'));
+    const errors = emitTypes(next);
+    // A type error fails the build, yet what was made is put in place, so that a notebook can be tried meanwhile.
+    if (existsSync(join(next, 'types'))) {
+      rmSync(join(dist, 'types'), { recursive: true, force: true });
+      renameSync(join(next, 'types'), join(dist, 'types'));
+    }
+    if (errors !== null) throw new BuildError(`the library has type errors:\n${errors}`);
   } finally {
     rmSync(next, { recursive: true, force: true });
   }
