@@ -63,13 +63,15 @@ async function runAndReport({ notebook, executed, report }, progress) {
   progress.line(`Report: ${report}`);
 }
 
-/** What to tell when a cell failed; a notebook with open choices is expected to. */
-function tellFailure(failure, { open }) {
-  if (open.length > 0) {
-    console.log(`Your choice is needed: no column was recognised for ${open.join(', ')}.`);
-    console.log(`Fill in the lines marked CHOOSE in ${failure.output}, then run its cells.`);
-    return;
-  }
+/** Whether a cell stopped because a column is still to be chosen, and for no other reason. */
+const awaitsChoice = (failure, { open }) => open.length > 0 && failure.reason.includes('marked CHOOSE');
+
+function tellChoice(failure, { open }) {
+  console.log(`Your choice is needed: no column was recognised for ${open.join(', ')}.`);
+  console.log(`Fill in the lines marked CHOOSE in ${failure.output}, then run its cells.`);
+}
+
+function tellFailure(failure) {
   console.error(`npm start: cell ${failure.number} (${failure.heading}) failed.`);
   console.error(failure.reason.replace(/^/gm, '  '));
   console.error(`The notebook as far as it ran: ${failure.output}`);
@@ -93,10 +95,13 @@ async function main() {
     await runAndReport(job, progress);
   } catch (error) {
     if (!(error instanceof CellFailure)) throw error;
-    tellFailure(error, job);
     status = 1;
+    if (!awaitsChoice(error, job)) {
+      tellFailure(error);
+      return status;
+    }
     // Choices are made in JupyterLab, so it opens for them; any other failure ends here.
-    if (job.open.length === 0) return status;
+    tellChoice(error, job);
   }
   if (!words.lab) return status;
   return (await runLab(job.notebook)) || status;
