@@ -1,10 +1,12 @@
 import { checkNames } from './column-names';
 import { type DeclaredKind, firstRecords, quote, readDelimitedColumns } from './delimited-columns';
-import { afterLine, lineOf, type RecordCell, type ScanLayout, splitRecord } from './delimited-scan';
 import { MISSING_NUMBERS } from './missing-words';
 import { isNumberText } from './parse-number';
 import type { RawTable, ReadRequest } from './raw-table';
+import type { ScanLayout } from './scan-layout';
+import { type RecordCell, splitRecord } from './split-record';
 import { withFinalLineEnd } from './text-bytes';
+import { afterLine, lineOf } from './text-lines';
 
 const HASH = 35;
 

@@ -1,16 +1,11 @@
 import type { ColumnValues } from '../columns';
-import {
-  lineOf,
-  type RecordCell,
-  type ScanKind,
-  type ScanLayout,
-  type ScannedColumn,
-  scanDelimited,
-  splitRecord,
-} from './delimited-scan';
+import { type ScanKind, type ScannedColumn, scanDelimited } from './delimited-scan';
 import { MISSING_NUMBERS } from './missing-words';
 import { isNumberText, isTooLongInteger } from './parse-number';
 import type { ReadRequest } from './raw-table';
+import type { ScanLayout } from './scan-layout';
+import { type RecordCell, splitRecord } from './split-record';
+import { lineOf } from './text-lines';
 
 /** What the file declares about a column's type; 'any' where it says nothing. */
 export type DeclaredKind = 'any' | 'number' | 'integer' | 'text' | 'boolean';

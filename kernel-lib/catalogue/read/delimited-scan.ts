@@ -1,29 +1,13 @@
-import { LONGEST_MISSING_WORD, MISSING_NUMBERS, MISSING_TEXTS } from './missing-words';
-import { exactDecimal, isNumberText, isTooLongInteger, numberOf, POWERS_OF_TEN } from './parse-number';
+import { LONGEST_MISSING_WORD } from './missing-words';
+import { exactDecimal, POWERS_OF_TEN } from './parse-number';
+import type { ScanLayout } from './scan-layout';
+import { type Counts, SlowCells } from './slow-cells';
+import { splitRecord } from './split-record';
 import { NotUtf8, TextCells } from './text-cells';
+import { afterLine, lineNotUtf8, lineOf, NEWLINE, QUOTE, RETURN, SPACE } from './text-lines';
 
 /** How a column is read. */
 export type ScanKind = 'number' | 'text' | 'skip';
-
-export interface ScanLayout {
-  /** Bytes of the whole file, ending with a line end. */
-  readonly bytes: Uint8Array;
-  /** Where the rows begin. */
-  readonly start: number;
-  /** Byte that separates cells. */
-  readonly delimiter: number;
-  /** Byte that begins a comment line, -1 for none. */
-  readonly comment: number;
-  readonly names: readonly string[];
-  /** Whether a quoted word for missing, or a quoted nothing, is missing too. */
-  readonly quotesSayNothing: boolean;
-  /** Extra words for missing, a set a column. */
-  readonly missingWords: readonly ReadonlySet<string>[];
-  /** How messages begin. */
-  readonly where: string;
-  /** Whether the file declares types, so that an unquoted NA in a text column is a text. */
-  readonly typed: boolean;
-}
 
 /** What was found in a column. */
 export interface ScannedColumn {
@@ -49,22 +33,9 @@ export interface Scan {
   readonly columns: readonly ScannedColumn[];
 }
 
-const NEWLINE = 10;
-const RETURN = 13;
-const SPACE = 32;
-const QUOTE = 34;
 const PLUS = 43;
 const MINUS = 45;
 const POINT = 46;
-
-/** Per-column counts that the slow way keeps. */
-interface Counts {
-  badCount: number;
-  firstBad: number;
-  firstBadText: string;
-  tooLong: number;
-  quotedNumbers: number;
-}
 
 /**
  * Reads delimited rows straight from bytes into typed columns.
@@ -236,127 +207,6 @@ export function scanDelimited(
   };
 }
 
-/** Cells that the fast way cannot take: quotes, spaces, words for missing, exponents, very long numbers, bad cells. */
-class SlowCells {
-  /** Where the last cell ended: at a delimiter or a line end. */
-  end = 0;
-  #from = 0;
-  #to = 0;
-  #quoted = false;
-  readonly #layout: ScanLayout;
-  readonly #counts: readonly Counts[];
-  /** In a single column an empty line is no cell, so that \\N stands for a missing text even where types are declared. */
-  readonly #isAlone: boolean;
-  /** The content of a quoted cell with doubled quotes made single. */
-  #unquoted: Uint8Array = new Uint8Array(64);
-
-  constructor(layout: ScanLayout, counts: readonly Counts[]) {
-    this.#layout = layout;
-    this.#counts = counts;
-    this.#isAlone = layout.names.length === 1;
-  }
-
-  number(start: number, column: number): number {
-    const source = this.#bounds(start);
-    if (this.#to === this.#from) return Number.NaN;
-    const text = latin(source, this.#from, this.#to).trim();
-    const counts = this.#counts[column];
-    if (isNumberText(text)) {
-      if (isTooLongInteger(text)) counts.tooLong++;
-      if (this.#quoted) counts.quotedNumbers++;
-      return numberOf(text);
-    }
-    const word = text.toLowerCase();
-    if (MISSING_NUMBERS.has(word) || this.#layout.missingWords[column].has(word)) return Number.NaN;
-    if (counts.badCount++ === 0) {
-      counts.firstBad = start;
-      counts.firstBadText = new TextDecoder().decode(source.subarray(this.#from, this.#to));
-    }
-    return Number.NaN;
-  }
-
-  text(start: number, column: number, out: TextCells | null): void {
-    const source = this.#bounds(start);
-    if (out === null) return;
-    if (!this.#quoted || this.#layout.quotesSayNothing) {
-      const length = this.#to - this.#from;
-      const words = this.#layout.missingWords[column];
-      let isMissing = length === 0;
-      if (!isMissing && (length <= LONGEST_MISSING_WORD || words.size > 0)) {
-        const word = latin(source, this.#from, this.#to).toLowerCase();
-        isMissing = (this.#layout.typed ? this.#isAlone && word === '\\n' : MISSING_TEXTS.has(word)) || words.has(word);
-      }
-      if (isMissing) {
-        out.addMissing();
-        return;
-      }
-    }
-    out.add(source, this.#from, this.#to);
-  }
-
-  /** Finds the cell that starts at `start`: its content lies in the returned bytes from #from to #to. */
-  #bounds(start: number): Uint8Array {
-    const { bytes, delimiter } = this.#layout;
-    let p = start;
-    if (delimiter !== SPACE) while (bytes[p] === SPACE) p++;
-    if (bytes[p] === QUOTE) return this.#quotedBounds(start, p + 1);
-    const from = p;
-    let c = bytes[p];
-    while (c !== delimiter && c !== NEWLINE && c !== RETURN) c = bytes[++p];
-    this.end = p;
-    while (p > from && bytes[p - 1] === SPACE) p--;
-    this.#from = from;
-    this.#to = p;
-    this.#quoted = false;
-    return bytes;
-  }
-
-  #quotedBounds(start: number, from: number): Uint8Array {
-    const { bytes, delimiter } = this.#layout;
-    let p = from;
-    let at = 0;
-    let doubled = false;
-    for (;;) {
-      const close = bytes.indexOf(QUOTE, p);
-      if (close < 0) throw unclosedQuote(this.#layout, start);
-      if (bytes[close + 1] !== QUOTE) {
-        if (doubled) at = this.#keep(p, close, at);
-        p = close;
-        break;
-      }
-      doubled = true;
-      at = this.#keep(p, close + 1, at);
-      p = close + 2;
-    }
-    this.#quoted = true;
-    this.#from = doubled ? 0 : from;
-    this.#to = doubled ? at : p;
-    p++;
-    if (delimiter !== SPACE) while (bytes[p] === SPACE) p++;
-    const c = bytes[p];
-    if (c !== delimiter && c !== NEWLINE && c !== RETURN) throw strayQuote(this.#layout, start);
-    this.end = p;
-    return doubled ? this.#unquoted : bytes;
-  }
-
-  #keep(from: number, to: number, at: number): number {
-    const { bytes } = this.#layout;
-    if (at + to - from > this.#unquoted.length) {
-      const grown = new Uint8Array(2 * (at + to - from));
-      grown.set(this.#unquoted.subarray(0, at));
-      this.#unquoted = grown;
-    }
-    this.#unquoted.set(bytes.subarray(from, to), at);
-    return at + to - from;
-  }
-}
-
-function latin(bytes: Uint8Array, from: number, to: number): string {
-  let text = '';
-  for (let p = from; p < to && p < from + 400; p++) text += String.fromCharCode(bytes[p]);
-  return text;
-}
-
 /** Whether a comment line would make a row. */
 function hasCells(layout: ScanLayout, from: number): boolean {
   const { bytes, delimiter, names } = layout;
@@ -384,100 +234,10 @@ function decoded(layout: ScanLayout, cells: TextCells | null, column: number): (
   }
 }
 
-/** Offset after the line end that follows `from`. */
-export function afterLine(bytes: Uint8Array, from: number): number {
-  let p = from;
-  while (p < bytes.length && bytes[p] !== NEWLINE && bytes[p] !== RETURN) p++;
-  return bytes[p] === RETURN && bytes[p + 1] === NEWLINE ? p + 2 : p + 1;
-}
-
-/** Number of the first line from `start` on that is not UTF-8. */
-function lineNotUtf8(bytes: Uint8Array, start: number): number {
-  const decoder = new TextDecoder('utf-8', { fatal: true });
-  let i = start;
-  try {
-    while (i < bytes.length) {
-      const next = afterLine(bytes, i);
-      decoder.decode(bytes.subarray(i, next));
-      i = next;
-    }
-  } catch {
-    // This is the line.
-  }
-  return lineOf(bytes, i);
-}
-
-/** Number of the line (from 1) on which a byte lies. */
-export function lineOf(bytes: Uint8Array, offset: number): number {
-  let line = 1;
-  for (let p = 0; p < offset; p++) {
-    if (bytes[p] === NEWLINE || (bytes[p] === RETURN && bytes[p + 1] !== NEWLINE)) line++;
-  }
-  return line;
-}
-
 function raggedRow(layout: ScanLayout, rowStart: number, expected: number): Error {
   const { bytes, delimiter, where } = layout;
   const found = splitRecord(bytes, rowStart, delimiter, where).cells.length;
   return new Error(
     `${where}, line ${lineOf(bytes, rowStart)}: expected ${expected} cells, found ${found}. Mend that line; a cell that contains the separator must stand in double quotes.`,
   );
-}
-
-function unclosedQuote(layout: ScanLayout, start: number): Error {
-  return new Error(
-    `${layout.where}, line ${lineOf(layout.bytes, start)}: a double quote is opened and never closed. Close it, or double it ("") where it belongs to the text.`,
-  );
-}
-
-function strayQuote(layout: ScanLayout, start: number): Error {
-  return new Error(
-    `${layout.where}, line ${lineOf(layout.bytes, start)}: text follows a closing double quote. Double the quote ("") where it belongs to the text.`,
-  );
-}
-
-export interface RecordCell {
-  readonly text: string;
-  readonly quoted: boolean;
-}
-
-/**
- * One record cut into its cells, decoded, as the header and the first rows are looked at.
- * @returns the cells and the offset of the next record
- * @throws Error when a quote is not closed
- */
-export function splitRecord(
-  bytes: Uint8Array,
-  start: number,
-  delimiter: number,
-  where: string,
-): { cells: RecordCell[]; next: number } {
-  const cells: RecordCell[] = [];
-  const decoder = new TextDecoder('utf-8');
-  let i = start;
-  for (;;) {
-    let p = i;
-    if (delimiter !== SPACE) while (bytes[p] === SPACE) p++;
-    if (bytes[p] === QUOTE) {
-      const from = ++p;
-      for (;;) {
-        p = bytes.indexOf(QUOTE, p);
-        if (p < 0) throw unclosedQuote({ bytes, where } as ScanLayout, i);
-        if (bytes[p + 1] !== QUOTE) break;
-        p += 2;
-      }
-      cells.push({ text: decoder.decode(bytes.subarray(from, p)).replaceAll('""', '"'), quoted: true });
-      p++;
-      while (p < bytes.length && bytes[p] !== delimiter && bytes[p] !== NEWLINE && bytes[p] !== RETURN) p++;
-    } else {
-      const from = p;
-      while (p < bytes.length && bytes[p] !== delimiter && bytes[p] !== NEWLINE && bytes[p] !== RETURN) p++;
-      cells.push({ text: decoder.decode(bytes.subarray(from, p)).replace(/ +$/, ''), quoted: false });
-    }
-    if (p < bytes.length && bytes[p] === delimiter) {
-      i = p + 1;
-      continue;
-    }
-    return { cells, next: bytes[p] === RETURN && bytes[p + 1] === NEWLINE ? p + 2 : p + 1 };
-  }
 }

@@ -2,9 +2,11 @@ import { parseDocument } from 'yaml';
 import type { ColumnValues } from '../columns';
 import { checkNames } from './column-names';
 import { type DeclaredKind, quote, readDelimitedColumns } from './delimited-columns';
-import { afterLine, lineOf, type ScanLayout, splitRecord } from './delimited-scan';
 import type { RawColumn, RawTable, ReadRequest } from './raw-table';
+import type { ScanLayout } from './scan-layout';
+import { splitRecord } from './split-record';
 import { withFinalLineEnd } from './text-bytes';
+import { afterLine, lineOf } from './text-lines';
 
 const HASH = 35;
 
