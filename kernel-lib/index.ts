@@ -1,2 +1,132 @@
-export { Catalogue } from './catalogue/catalogue';
-export { type Measured, measured } from './quantity/measured';
+import './notebook/install';
+
+// catalogue
+export { Catalogue, type CatalogueParts } from './catalogue/catalogue';
+export type { ColumnData, ColumnInfo, ColumnKind, ColumnValues } from './catalogue/columns';
+export { type AstrometricNoiseOptions, astrometricNoise } from './catalogue/cuts/astrometric-noise';
+export { type ConeOptions, cone } from './catalogue/cuts/cone';
+export type { Cut } from './catalogue/cuts/cut';
+export { hasBands } from './catalogue/cuts/has-bands';
+export { insidePolygon, type PolygonOptions } from './catalogue/cuts/inside-polygon';
+export { magnitudeRange } from './catalogue/cuts/magnitude-range';
+export { parallaxSignal } from './catalogue/cuts/parallax-signal';
+export { type CatalogueRow, where } from './catalogue/cuts/where';
+export type { HistoryStep } from './catalogue/history';
+export type { MissingValues } from './catalogue/read/declared-missing';
+export type { BadCells } from './catalogue/read/raw-table';
+export { type CatalogueFormat, type ReadCatalogueOptions, readCatalogue } from './catalogue/read/read-catalogue';
+export {
+  type NamedColumn,
+  type OpenRole,
+  type RecognisedRoles,
+  recogniseRoles,
+} from './catalogue/read/recognise-roles';
+export type { BaseRole, Role, Roles } from './catalogue/roles';
+export { type WriteCatalogueOptions, writeCatalogue } from './catalogue/write/write-catalogue';
+// diagrams
+export { type AgeTurnoffDiagramOptions, ageTurnoffDiagram, type TurnoffCurve } from './diagrams/age-turnoff-diagram';
+export {
+  type ColourMagnitudeCurve,
+  type ColourMagnitudeDiagramOptions,
+  colourMagnitudeDiagram,
+  type IsochroneCurve,
+} from './diagrams/colour-magnitude-diagram';
+export { type CornerDiagramOptions, cornerDiagram } from './diagrams/corner-diagram';
+export { Figure, type FigureLayout, type FigureTrace } from './diagrams/figure';
+export { type HrCurve, type HrDiagramOptions, hrDiagram } from './diagrams/hr-diagram';
+export {
+  type MassLuminosityCurve,
+  type MassLuminosityDiagramOptions,
+  type MassLuminosityStars,
+  massLuminosityDiagram,
+} from './diagrams/mass-luminosity-diagram';
+export { type ParallaxHistogramOptions, parallaxHistogram } from './diagrams/parallax-histogram';
+export { type ProperMotionDiagramOptions, properMotionDiagram } from './diagrams/proper-motion-diagram';
+export { type ResidualDiagramOptions, type Residuals, residualDiagram } from './diagrams/residual-diagram';
+export { type SkyMapOptions, skyMap } from './diagrams/sky-map';
+export { type StaticFigureOptions, staticFigure } from './diagrams/static-svg';
+// extinction
+export { type BandExtinctionOptions, bandExtinction, colourExcessRatio } from './extinction/band-coefficients';
+export { type DereddenOptions, deredden } from './extinction/deredden';
+export { extinctionLaw, type LawName } from './extinction/laws';
+// membership
+export { type FindMembersOptions, findMembers } from './membership/find-members';
+export {
+  type ClusterSummary as MemberCluster,
+  type FieldComponent,
+  Membership,
+  type SelectionQuality,
+  type SpaceMotion,
+} from './membership/membership';
+// models
+export { analyticModel, analyticModelWith } from './models/analytic-model';
+export { type EvolvedStar, type EvolvedStars, type EvolveOptions, evolve } from './models/evolve';
+export { type ExportIsochronesOptions, exportIsochrones } from './models/grid/export-isochrones';
+export { type IsochroneGrid, type IsochroneGridOptions, isochroneGrid } from './models/grid/isochrone-grid';
+export { type InitialFinalOptions, initialFinalMass, progenitorMass } from './models/initial-final-mass';
+export { type InitialMassFunction, initialMassFunction } from './models/initial-mass-function';
+export { type AnalyticIsochroneOptions, isochrone } from './models/isochrone';
+export { type IsochroneTurnoff, isochroneTurnoff, type TurnoffTable, turnoffTable } from './models/isochrone-turnoff';
+export { mainSequenceLifetime, turnoffMass } from './models/lifetime';
+export { type Composition, SOLAR_Z } from './models/metallicity';
+export type { Isochrone, IsochroneOptions, StellarModel } from './models/stellar-model';
+export { type Track, type TrackOptions, track } from './models/track';
+export {
+  type CoolingOptions,
+  type CoolingWhiteDwarf,
+  type WhiteDwarfAge,
+  whiteDwarfAge,
+  whiteDwarfCooling,
+  whiteDwarfRadius,
+} from './models/white-dwarf';
+export { type ZeroAgeStar, type ZeroAgeStars, zeroAge } from './models/zero-age';
+export { show } from './notebook/display';
+// notebook
+export { interruptible } from './notebook/interruptible';
+export { type Progress, type ProgressOptions, progress } from './notebook/progress';
+// photometry
+export { type AbsoluteMagnitudesOptions, absoluteMagnitudes } from './photometry/absolute-magnitudes';
+export { type BolometricCorrectionOptions, bolometricCorrection } from './photometry/bolometric-correction';
+export {
+  type ColourTemperatureOptions,
+  colourFromTemperature,
+  temperatureFromColour,
+} from './photometry/colour-temperature';
+export {
+  type LuminosityClass,
+  SPECTRAL_CLASSES,
+  type SpectralClassBounds,
+  spectralClass,
+} from './photometry/spectral-class';
+// quantity
+export type { Band, ColourName } from './quantity/band';
+export {
+  type Measured,
+  measured,
+  measuredFromSamples,
+  measuredFromSigma,
+} from './quantity/measured';
+export { convertUnits } from './quantity/units';
+// relations
+export { lifetimeFromMass } from './relations/lifetime';
+// report
+export { type ClusterSummary, type ClusterSummaryParts, clusterSummary } from './report/cluster-summary';
+export { type ExportReportOptions, exportReport, type WrittenReport } from './report/export-report';
+export { type ReportHtmlOptions, reportHtml } from './report/report-html';
+// simulate
+export { type SimulateClusterOptions, simulateCluster } from './simulate/simulate-cluster';
+// stars
+export {
+  type EvolutionaryGroup,
+  type EvolutionaryGroupOptions,
+  evolutionaryGroup,
+  evolutionaryGroups,
+} from './stars/evolutionary-group';
+export { type PhysicalPropertiesOptions, physicalProperties } from './stars/physical-properties';
+export { wienPeak } from './stars/wien-peak';
+// turnoff
+export type { ClusterOptions } from './turnoff/cluster-setting';
+export { type EstimateReddeningOptions, estimateReddening } from './turnoff/main-sequence-fit';
+export { type RidgeLine, type RidgeLineOptions, ridgeLine } from './turnoff/ridge-line';
+export { type TurnoffAge, type TurnoffAgeOptions, turnoffAge } from './turnoff/turnoff-age';
+export { type TurnoffPoint, type TurnoffPointOptions, turnoffPoint } from './turnoff/turnoff-point';
