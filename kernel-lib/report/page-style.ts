@@ -27,12 +27,14 @@ details.code pre{padding:.7rem .9rem}
 main p code,main li code{padding:.1em .3em}
 .output{margin:.5rem 0;overflow-x:auto;max-width:100%}
 .output img{max-width:100%;height:auto}
+:where([data-fig]>img){display:block}
 .output.error{border-left:4px solid var(--bad);background:var(--bad-wash);padding:.6rem .9rem}
 .output.warning{border-left:4px solid var(--warn);background:var(--warn-wash);padding:.6rem .9rem}
 table{border-collapse:collapse;font-size:.9rem;font-variant-numeric:tabular-nums}
 th,td{border-bottom:1px solid var(--line);padding:3px 10px;text-align:left}
 thead th{border-bottom:2px solid var(--line)}
 caption{color:var(--faint);padding:4px 0}
+math{font-family:'STIX Two Math','Cambria Math','Latin Modern Math','DejaVu Math TeX Gyre',math}
 math[display=block]{margin:.6rem 0}
 blockquote{margin:.8rem 0;padding-left:1rem;border-left:3px solid var(--line);color:var(--faint)}
 footer{color:var(--faint);font-size:.85rem;border-top:1px solid var(--line);margin-top:3rem;padding-top:.8rem;padding-bottom:2rem}

@@ -35,6 +35,6 @@ const CLEARS = /\u001b\[0?K/;
 
 function withoutErased(line: string): string {
   let text = line;
-  while (/[^\b]\b/.test(text)) text = text.replace(/[^\b]\b/g, '');
-  return text.replace(/\b/g, '');
+  while (/[^\b][\b]/.test(text)) text = text.replace(/[^\b][\b]/g, '');
+  return text.replace(/[\b]/g, '');
 }

@@ -23,14 +23,14 @@ export function figurePage(plotlyModule: unknown): FigurePage {
   const plotly = plotlyModule as PlotlyApi;
   const liveLimit = 4;
   const live: HTMLElement[] = [];
-  const seen = new WeakSet<Element>();
+  const away = new WeakSet<Element>();
   const waiting = new WeakSet<Element>();
   const places = new WeakMap<HTMLElement, HTMLElement>();
 
   const style = document.createElement('style');
   // On paper the still picture is right: its inks read on white whatever the theme of the page.
   style.textContent =
-    '[data-drawn]>img{display:none}@media print{[data-drawn]>img{display:block}[data-drawn]>div{display:none!important}}';
+    '[data-fig]>img{display:block}[data-drawn]>img{display:none}@media print{[data-drawn]>img{display:block}[data-drawn]>div{display:none!important}}';
   document.head.append(style);
 
   const hasWebGl = (() => {
@@ -92,7 +92,7 @@ export function figurePage(plotlyModule: unknown): FigurePage {
     if (!hasWebGl) for (const trace of data) if (trace.type === 'scattergl') trace.type = 'scatter';
     if (data.some((trace) => trace.type?.endsWith('gl'))) {
       if (live.length >= liveLimit) {
-        const victim = live.find((other) => !other.isConnected) ?? live.find((other) => !seen.has(other));
+        const victim = live.find((other) => !other.isConnected) ?? live.find((other) => away.has(other));
         if (!victim) {
           waiting.add(figure);
           sights.observe(figure);
@@ -114,6 +114,8 @@ export function figurePage(plotlyModule: unknown): FigurePage {
     places.set(figure, place);
     place.dataset.width = String(figure.clientWidth);
     const themed = {
+      paper_bgcolor: 'rgba(0,0,0,0)',
+      plot_bgcolor: 'rgba(0,0,0,0)',
       ...layout,
       font: { ...layout.font, color: ink },
       modebar: { bgcolor: 'rgba(0,0,0,0)', color: ink, activecolor: ink },
@@ -135,8 +137,8 @@ export function figurePage(plotlyModule: unknown): FigurePage {
   const sights = new IntersectionObserver(
     (entries) => {
       for (const { target, isIntersecting } of entries) {
-        if (isIntersecting) seen.add(target);
-        else seen.delete(target);
+        if (isIntersecting) away.delete(target);
+        else away.add(target);
       }
       for (const { target, isIntersecting } of entries) {
         if (isIntersecting && waiting.has(target)) drawOne(target as HTMLElement);
