@@ -92,21 +92,13 @@ function readingCell({ source, roles, columns, warnings }) {
   return code(lines, `const field = await readCatalogue(${quote(source)}, { roles });`, 'field');
 }
 
-const names = [
-  'readCatalogue',
-  'hasBands',
-  'findMembers',
-  'properMotionDiagram',
-  'clusterDistance',
-  'parallaxHistogram',
-  'estimateReddening',
-  'colourMagnitudeDiagram',
-  'physicalProperties',
-  'turnoffPoint',
-  'turnoffAge',
-  'isochrone',
-  'hrDiagram',
-  'clusterSummary',
+/** What the notebook imports, as an import statement of lines that fit a cell. */
+const imports = [
+  'import {',
+  '  readCatalogue, hasBands, findMembers, clusterDistance, estimateReddening, physicalProperties,',
+  '  ridgeLine, turnoffPoint, turnoffAge, isochrone, isochroneTurnoff, clusterSummary,',
+  '  properMotionDiagram, parallaxHistogram, skyMap, colourMagnitudeDiagram, hrDiagram,',
+  "} from 'coeval';",
 ];
 
 /** The cells of the analysis, in order. */
@@ -114,18 +106,19 @@ function cellsFor(settings) {
   const { title, introduction, roles, metallicity } = settings;
   const { colour, magnitude, parts } = choosePhotometry(roles);
   const cut = has(roles, `colour.${colour}`) ? [] : parts;
-  const bands = [...new Set([magnitude, ...cut])].map(quote).join(', ');
+  const bands = [...new Set([magnitude, ...cut])];
+  const sky = has(roles, 'rightAscension') && has(roles, 'declination');
   return [
     markdown(`# ${inMarkdown(title)}`, '', introduction),
-    code(
-      `import { ${names.slice(0, 6).join(', ')},`,
-      `  ${names.slice(6, 11).join(', ')},`,
-      `  ${names.slice(11).join(', ')} } from 'coeval';`,
-    ),
+    code(imports),
     markdown('## The catalogue', '', 'What was read: units, ranges, missing values, and which column has which role.'),
     readingCell(settings),
-    markdown('## Stars with usable photometry'),
-    code(`const usable = field.keep(hasBands(${bands}));`, 'usable'),
+    markdown(
+      '## Stars with usable photometry',
+      '',
+      'A cut is kept in the history of the catalogue, with the rows before and after.',
+    ),
+    code(`const usable = field.keep(hasBands(${bands.map(quote).join(', ')}));`, 'usable'),
     markdown(
       '## Members',
       '',
@@ -133,6 +126,7 @@ function cellsFor(settings) {
     ),
     code('const members = findMembers(usable);', 'members'),
     code('properMotionDiagram(usable, { probability: members.probability })'),
+    ...(sky ? [code('skyMap(usable, { probability: members.probability })')] : []),
     code(
       '// Stars more likely members than not. Raise the limit for a purer, smaller sample.',
       'const cluster = members.select(0.5);',
@@ -149,22 +143,45 @@ function cellsFor(settings) {
     code(
       '// [Fe/H] in dex: assumed here, not measured.',
       `const metallicity = ${metallicity};`,
-      'const reddening = estimateReddening(cluster, { distance: distance.distance, metallicity });',
+      `const diagram = { colour: '${colour}', magnitude: '${magnitude}' } as const;`,
+      'const reddening = estimateReddening(cluster, { ...diagram, distanceModulus: distance.modulus, metallicity });',
       'reddening',
     ),
-    markdown('## Turnoff and age'),
+    markdown(
+      '## Turnoff and age',
+      '',
+      'The ridge line and its bluest point are what the eye sees. The age comes from every star about the turnoff, single or',
+      'binary, against the sequences of all ages; the errors of distance and reddening are carried through.',
+    ),
     code(
-      'const place = { distance: distance.distance, ebv: reddening, metallicity };',
+      'const place = { ...diagram, distanceModulus: distance.modulus, ebv: reddening, metallicity };',
+      'const ridge = ridgeLine(cluster, diagram);',
       'const turnoff = turnoffPoint(cluster, place);',
       'turnoff',
     ),
     code('const age = turnoffAge(cluster, place);', 'age'),
-    markdown('## Colour-magnitude and HR diagram', '', `With the isochrone of the age found, in ${colour}.`),
-    code(
-      'const curve = isochrone({ logAge: 9 + Math.log10(age.age.value), metallicity });',
-      `colourMagnitudeDiagram(cluster, { colour: ${quote(colour)}, modulus: distance.modulus.value, ebv: reddening.value, isochrones: [curve] })`,
+    markdown(
+      '## Colour-magnitude diagram',
+      '',
+      'As observed, with the ridge line and the isochrone of the age found, reddened and moved to the cluster.',
     ),
-    code('const stars = physicalProperties(cluster, place);', 'hrDiagram(stars, { isochrones: [curve], metallicity })'),
+    code(
+      `const curve = isochrone({ logAge: age.logAge.value, metallicity, bands: [${[...new Set([...parts, magnitude])].map(quote).join(', ')}] });`,
+      'colourMagnitudeDiagram(cluster, {',
+      '  ...diagram, modulus: distance.modulus, ebv: reddening, isochrones: [curve], ridge,',
+      '  turnoff: { colour: turnoff.observedColour, magnitude: turnoff.observedMagnitude },',
+      '})',
+    ),
+    markdown(
+      '## HR diagram',
+      '',
+      'Luminosity and temperature of every member, with the zero-age main sequence and lines of equal radius.',
+    ),
+    code(
+      'const stars = physicalProperties(cluster, { ...diagram, distance: distance.distance, ebv: reddening, metallicity });',
+      'const { logTeff, logL } = isochroneTurnoff(curve, diagram);',
+      'hrDiagram(stars, { isochrones: [curve], metallicity, turnoff: { logTeff, logL } })',
+    ),
     markdown('## Result'),
     code(`clusterSummary({ name: ${quote(title)}, members, distance, reddening, age, metallicity })`),
   ];
