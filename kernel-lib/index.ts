@@ -45,10 +45,14 @@ export { type ProperMotionDiagramOptions, properMotionDiagram } from './diagrams
 export { type ResidualDiagramOptions, type Residuals, residualDiagram } from './diagrams/residual-diagram';
 export { type SkyMapOptions, skyMap } from './diagrams/sky-map';
 export { type StaticFigureOptions, staticFigure } from './diagrams/static-svg';
+// distance
+export { type ClusterDistance, type ClusterDistanceOptions, clusterDistance } from './distance/cluster-distance';
+export { type StarDistancesOptions, starDistances } from './distance/star-distances';
 // extinction
 export { type BandExtinctionOptions, bandExtinction, colourExcessRatio } from './extinction/band-coefficients';
 export { type DereddenOptions, deredden } from './extinction/deredden';
 export { extinctionLaw, type LawName } from './extinction/laws';
+
 // membership
 export { type FindMembersOptions, findMembers } from './membership/find-members';
 export {

@@ -1,6 +1,6 @@
 import type { Catalogue } from '../catalogue/catalogue';
 import { findRoot } from '../numeric/find-root';
-import { normalCumulative } from '../numeric/normal-distribution';
+import { gaussianSumQuantile } from '../numeric/gaussian-sum';
 import { type Measured, measured, sortedQuantile } from '../quantity/measured';
 import { checkOptions } from '../quantity/options';
 import {
@@ -148,16 +148,10 @@ function combine(peaks: readonly { peak: Peak; weight: number }[], systematic: n
   const top = Math.max(...good.map((p) => p.weight));
   const parts = good.map((p) => ({
     at: p.peak.at,
-    sigma: Math.hypot(p.peak.sigma, systematic),
+    sigma: Math.max(Math.hypot(p.peak.sigma, systematic), 1e-9),
     share: Math.exp(p.weight - top),
   }));
-  const total = parts.reduce((s, p) => s + p.share, 0);
-  const cumulative = (x: number) =>
-    parts.reduce((s, p) => s + (p.share / total) * normalCumulative((x - p.at) / Math.max(p.sigma, 1e-9)), 0);
-  const reach = 8 * Math.max(...parts.map((p) => p.sigma));
-  const from = Math.min(...parts.map((p) => p.at)) - reach;
-  const to = Math.max(...parts.map((p) => p.at)) + reach;
-  const quantile = (q: number) => findRoot((x) => cumulative(x) - q, from, to);
+  const quantile = (q: number) => gaussianSumQuantile(parts, q);
   const value = quantile(0.5);
   return measured(value, Math.min(value, quantile(0.158655)), Math.max(value, quantile(0.841345)), 'mag');
 }
