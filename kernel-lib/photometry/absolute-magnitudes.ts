@@ -1,7 +1,7 @@
 import { BAND_NAMES, type Band } from '../quantity/band';
 import { SOLAR_BOLOMETRIC_MAGNITUDE } from '../quantity/constants';
 import { checkOptions, describe } from '../quantity/options';
-import { compositeLight } from './composite-light';
+import { compositeLight } from './composite/composite-light';
 import { bandCorrection, giantShare } from './light-table';
 
 /** Stars whose magnitudes are wanted. */

@@ -1,6 +1,6 @@
 import type { Band } from '../quantity/band';
 import { checkOptions } from '../quantity/options';
-import { compositeLight } from './composite-light';
+import { compositeLight } from './composite/composite-light';
 import { bandCorrection, giantShare } from './light-table';
 
 /** Options of `bolometricCorrection`. */

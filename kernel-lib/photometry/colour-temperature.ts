@@ -1,6 +1,6 @@
 import { type Band, bandsOfColour, type ColourName } from '../quantity/band';
 import { checkOptions } from '../quantity/options';
-import { compositeLight } from './composite-light';
+import { compositeLight } from './composite/composite-light';
 import { bandCorrection, GRID_NODES, GRID_START, GRID_STEP, giantShare } from './light-table';
 
 /** Options of colour and temperature. */
