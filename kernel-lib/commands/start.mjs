@@ -58,7 +58,11 @@ function prepareFlagship() {
 async function runAndReport({ notebook, executed, report }, progress) {
   const run = await executeNotebook(notebook, executed, { progress });
   progress.line(`Ran ${basename(notebook)} in ${run.elapsed}; with its results: ${executed}`);
-  await library().exportReport({ notebook: executed, output: report });
+  try {
+    await library().exportReport({ notebook: executed, output: report });
+  } catch (error) {
+    throw new Problem(error.message);
+  }
   progress.line(resultLine(run.notebook) ?? 'The notebook printed no line that begins with "Result: ".');
   progress.line(`Report: ${report}`);
 }
