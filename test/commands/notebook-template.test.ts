@@ -97,7 +97,10 @@ describe('notebookFor', () => {
 
   it('imports only what the library exports, and uses all of it', () => {
     const [imports, ...cells] = codeOf(notebookFor({ title: 'T', source: 'f.csv', roles: complete, columns: [] }));
-    const names = (imports.match(/\{([^}]*)\}/)?.[1] ?? '').split(',').map((name: string) => name.trim());
+    const names = (imports.match(/\{([^}]*)\}/)?.[1] ?? '')
+      .split(',')
+      .map((name: string) => name.trim())
+      .filter((name: string) => name !== '');
     const rest = cells.join('\n');
     for (const name of names) {
       expect(rest).toMatch(new RegExp(`\\b${name}\\(`));
