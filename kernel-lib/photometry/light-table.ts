@@ -9,12 +9,12 @@ export const GRID_NODES = 351;
 /** [Fe/H] for which the table answers, dex. */
 export const METALLICITY_RANGE: readonly [number, number] = [-2.5, 0.5];
 
+/** Coefficients of a knot: dwarf level, its linear and quadratic term in [Fe/H]; the same of what giants differ from dwarfs. */
+const TERMS = 6;
+
 /** The bolometric correction in one band as a function of temperature, gravity and metallicity. */
 export interface BandLight {
-  /**
-   * Six cubic B-spline coefficients for each knot, shape (GRID_NODES + 2, 6): dwarf level, its linear and quadratic term in
-   * [Fe/H]; then the same for what giants differ from dwarfs.
-   */
+  /** Cubic B-spline coefficients, shape (GRID_NODES + 2, TERMS). */
   readonly coefficients: Float64Array;
   /** Least log Teff of dwarfs. */
   readonly low: number;
@@ -24,9 +24,9 @@ export interface BandLight {
   readonly high: number;
 }
 
-/** Values at the grid's nodes from which a BandLight is made, each shape (GRID_NODES). */
+/** Values at the grid's nodes from which a BandLight is made. */
 export interface BandNodes {
-  /** Dwarf level, linear, quadratic; giant difference level, linear, quadratic. */
+  /** Shape (TERMS) of shape (GRID_NODES). */
   readonly terms: readonly ArrayLike<number>[];
   readonly low: number;
   readonly lowGiant: number;
@@ -41,20 +41,21 @@ export function gridLogTeff(): Float64Array {
 /** Turns values at nodes into splines. */
 export function bandLight(nodes: BandNodes): BandLight {
   const terms = nodes.terms.map(uniformSpline);
-  const coefficients = new Float64Array(6 * (GRID_NODES + 2));
-  for (let i = 0; i < GRID_NODES + 2; i++) for (let k = 0; k < 6; k++) coefficients[6 * i + k] = terms[k][i];
+  const coefficients = new Float64Array(TERMS * (GRID_NODES + 2));
+  for (let i = 0; i < GRID_NODES + 2; i++) for (let k = 0; k < TERMS; k++) coefficients[TERMS * i + k] = terms[k][i];
   return { coefficients, low: nodes.low, lowGiant: nodes.lowGiant, high: nodes.high };
 }
 
 /**
- * Share of the giants' relation in a star's light: 0 for dwarfs, 1 for giants, with three continuous derivatives... between.
+ * How far a star's light follows the giants' relation: 0 for dwarfs, 1 for giants, two continuous derivatives between. The
+ * change runs from log g 4.0 to 2.2 up to 7000 K and from 3.5 to 1.7 above 9000 K, since hot stars leave the main sequence at lower
+ * gravity.
  * @param logTeff    log10 of K
  * @param logGravity log10 of cm/s2
  */
 export function giantShare(logTeff: number, logGravity: number): number {
-  // Hot stars leave the main sequence at lower gravity than cool ones do.
   const h = (logTeff - 3.85) * 10;
-  const hot = h <= 0 ? 0 : h >= 1 ? 1 : h * h * (3 - 2 * h);
+  const hot = h <= 0 ? 0 : h >= 1 ? 1 : h * h * h * (10 + h * (6 * h - 15));
   const x = (4 - 0.5 * hot - logGravity) / 1.8;
   if (!(x > 0)) return x <= 0 ? 0 : Number.NaN;
   return x >= 1 ? 1 : x * x * x * (10 + x * (6 * x - 15));
@@ -69,19 +70,36 @@ export function giantShare(logTeff: number, logGravity: number): number {
  * @returns mag; NaN outside the ranges
  */
 export function bandCorrection(band: BandLight, logTeff: number, share: number, metallicity: number): number {
-  if (!(logTeff >= (share > 0 ? band.lowGiant : band.low) && logTeff <= band.high)) return Number.NaN;
-  if (!(metallicity >= -2.5 && metallicity <= 0.5)) return Number.NaN;
-  const c = band.coefficients;
+  const out = ONE_VALUE;
   const at = (logTeff - GRID_START) / GRID_STEP;
-  let i = at | 0;
-  if (i > GRID_NODES - 2) i = GRID_NODES - 2;
-  const u = at - i;
+  const i = at >= GRID_NODES - 1 ? GRID_NODES - 2 : at | 0;
+  if (!(logTeff >= (share > 0 ? band.lowGiant : band.low) && logTeff <= band.high)) return Number.NaN;
+  if (!(metallicity >= METALLICITY_RANGE[0] && metallicity <= METALLICITY_RANGE[1])) return Number.NaN;
+  knotWeights(at - i, out);
+  return weighed(band.coefficients, TERMS * i, out[0], out[1], out[2], out[3], share, metallicity);
+}
+
+const ONE_VALUE = new Float64Array(4);
+
+/** Weights of the four B-splines at a fraction of the way between two nodes. */
+function knotWeights(u: number, out: Float64Array): void {
   const v = 1 - u;
-  const w0 = (v * v * v) / 6;
-  const w1 = (u * u * (3 * u - 6) + 4) / 6;
-  const w3 = (u * u * u) / 6;
-  const w2 = 1 - w0 - w1 - w3;
-  const k = 6 * i;
+  out[0] = (v * v * v) / 6;
+  out[1] = (u * u * (3 * u - 6) + 4) / 6;
+  out[3] = (u * u * u) / 6;
+  out[2] = 1 - out[0] - out[1] - out[3];
+}
+
+function weighed(
+  c: Float64Array,
+  k: number,
+  w0: number,
+  w1: number,
+  w2: number,
+  w3: number,
+  share: number,
+  metallicity: number,
+): number {
   let sum = w0 * c[k] + w1 * c[k + 6] + w2 * c[k + 12] + w3 * c[k + 18];
   if (metallicity !== 0) {
     const m1 = w0 * c[k + 1] + w1 * c[k + 7] + w2 * c[k + 13] + w3 * c[k + 19];
@@ -96,4 +114,43 @@ export function bandCorrection(band: BandLight, logTeff: number, share: number, 
     giant += metallicity * (m1 + metallicity * m2);
   }
   return sum + share * giant;
+}
+
+/**
+ * Bolometric magnitudes less bolometric corrections, for many stars and bands. Writes only into `out`.
+ * @param bands       light tables, shape (b)
+ * @param out         mag, shape (b) of shape (n); NaN outside the ranges
+ * @param bolometric  bolometric magnitude of 1 solar luminosity
+ * @param logL        log10 of solar luminosities, shape (n)
+ * @param logTeff     log10 of K, shape (n)
+ * @param logGravity  log10 of cm/s2, shape (n) or one for all
+ * @param metallicity [Fe/H], shape (n) or one for all
+ */
+export function magnitudesInto(
+  bands: readonly BandLight[],
+  out: readonly Float64Array[],
+  bolometric: number,
+  logL: ArrayLike<number>,
+  logTeff: ArrayLike<number>,
+  logGravity: number | ArrayLike<number>,
+  metallicity: number | ArrayLike<number>,
+): void {
+  const w = ONE_VALUE;
+  const [poor, rich] = METALLICITY_RANGE;
+  for (let i = 0; i < logL.length; i++) {
+    const t = logTeff[i];
+    const share = giantShare(t, typeof logGravity === 'number' ? logGravity : logGravity[i]);
+    const f = typeof metallicity === 'number' ? metallicity : metallicity[i];
+    const m = f >= poor && f <= rich ? bolometric - 2.5 * logL[i] : Number.NaN;
+    const at = (t - GRID_START) / GRID_STEP;
+    const node = at >= GRID_NODES - 1 ? GRID_NODES - 2 : at | 0;
+    knotWeights(at - node, w);
+    for (let b = 0; b < bands.length; b++) {
+      const band = bands[b];
+      out[b][i] =
+        t >= (share > 0 ? band.lowGiant : band.low) && t <= band.high
+          ? m - weighed(band.coefficients, TERMS * node, w[0], w[1], w[2], w[3], share, f)
+          : Number.NaN;
+    }
+  }
 }
