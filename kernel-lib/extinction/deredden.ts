@@ -5,6 +5,14 @@ import { BAND_NAMES, type Band, bandsOfColour } from '../quantity/band';
 import type { Measured } from '../quantity/measured';
 import { checkOptions, checkRange, describe } from '../quantity/options';
 import { bandExtinction } from './band-coefficients';
+import { a0PerReddening } from './convert-reddening';
+import {
+  GAIA_A0_RANGE,
+  type GaiaBand,
+  gaiaExtinctionRatio,
+  heldGaiaColour,
+  intrinsicGaiaColour,
+} from './gaia-extinction';
 import { type LawName, lawNamed } from './laws';
 
 /** Options of `deredden` and `redden`. */
@@ -15,9 +23,14 @@ export interface DereddenOptions {
   readonly rV?: number;
   /** Extinction law. Default `CCM89`. */
   readonly law?: LawName | (string & {});
+  /**
+   * Gaia's G, BP and RP by coefficients that follow each star's own colour (see gaiaExtinctionRatio) in place of one coefficient a band.
+   * For rV 3.1 and A0 up to 5 mag. Default false.
+   */
+  readonly colourTerms?: boolean;
 }
 
-const OPTIONS = ['ebv', 'rV', 'law'];
+const OPTIONS = ['ebv', 'rV', 'law', 'colourTerms'];
 
 /**
  * Takes interstellar extinction off every magnitude and colour whose role is known.
@@ -29,7 +42,7 @@ const OPTIONS = ['ebv', 'rV', 'law'];
  * @throws TypeError for an unknown option or a reddening that is none, RangeError for values out of range or not one a star,
  *   Error when no magnitude and no colour has a role
  * @example deredden(members, { ebv: 0.05 }).numbers('magnitude.G')
- * Source: the law chosen, at effective wavelengths (see bandExtinction).
+ * Source: the law chosen, at effective wavelengths (see bandExtinction, and gaiaExtinctionRatio for colourTerms).
  */
 export function deredden(catalogue: Catalogue, options: DereddenOptions): Catalogue {
   return shift('deredden', catalogue, options, -1);
@@ -48,22 +61,32 @@ export function redden(catalogue: Catalogue, options: DereddenOptions): Catalogu
 
 function shift(caller: 'deredden' | 'redden', catalogue: Catalogue, options: DereddenOptions, sign: 1 | -1): Catalogue {
   checkOptions(caller, options, OPTIONS);
-  const { rV = 3.1, law = 'CCM89' } = options;
+  const { rV = 3.1, law = 'CCM89', colourTerms = false } = options;
   lawNamed(caller, law, rV);
   const ebv = reddeningOf(caller, catalogue, options.ebv);
-  const added: ColumnData[] = [];
-  const roles: Partial<Record<Role, string>> = {};
+  const at = (i: number) => (typeof ebv === 'number' ? ebv : ebv[i]);
   const used = new Set<Band>();
-  const taken = new Set(catalogue.columns.map((c) => c.name));
   const ratio = (band: Band) => {
     used.add(band);
     return bandExtinction(band, { rV, law });
   };
+  const gaia = colourTerms ? gaiaLosses(caller, catalogue, sign, { at, rV, law }) : null;
+  /** Extinction of star i in a band. */
+  const loss = (band: Band): ((i: number) => number) => {
+    if (gaia !== null && (band === 'G' || band === 'BP' || band === 'RP')) {
+      used.add(band);
+      return (i) => gaia[band][i];
+    }
+    const each = rV * ratio(band);
+    return (i) => each * at(i);
+  };
+  const added: ColumnData[] = [];
+  const roles: Partial<Record<Role, string>> = {};
+  const taken = new Set(catalogue.columns.map((c) => c.name));
   for (const [role, name] of Object.entries(catalogue.roles) as [Role, string][]) {
-    const amount = perReddening(role, rV, ratio);
-    if (amount === null) continue;
-    const old = catalogue.numbers(role);
-    const values = old.map((v, i) => v + sign * amount * (typeof ebv === 'number' ? ebv : ebv[i]));
+    const change = changeOf(role, loss, at);
+    if (change === null) continue;
+    const values = catalogue.numbers(role).map((v, i) => v + sign * change(i));
     const info = catalogue.columns.find((c) => c.name === name);
     const fresh = freeName(`${name}${sign < 0 ? '_0' : '_red'}`, taken);
     const what = sign < 0 ? 'without extinction' : 'with extinction';
@@ -75,14 +98,57 @@ function shift(caller: 'deredden' | 'redden', catalogue: Catalogue, options: Der
       `${caller}: ${catalogue.source} has no magnitude or colour with a known role. Give roles such as magnitude.V when reading.`,
     );
   }
-  const coefficients = BAND_NAMES.filter((b) => used.has(b)).map((b) => `A(${b})/A(V) ${ratio(b).toFixed(4)}`);
+  const words = BAND_NAMES.filter((b) => used.has(b)).map((b) =>
+    gaia !== null && b in gaia ? `A(${b}) by the star's colour` : `A(${b})/A(V) ${ratio(b).toFixed(4)}`,
+  );
+  if (gaia !== null && gaia.held > 0)
+    words.push(`${gaia.held} stars beyond BP-RP -0.06 to 2.5 with the coefficients there`);
   const twice = catalogue.history.filter((h) => h.action.startsWith(`${caller}:`)).length;
-  const again = twice > 0 ? `; done before, ${twice === 1 ? 'once' : `${twice} times`}: both count` : '';
+  if (twice > 0) words.push(`done before, ${twice === 1 ? 'once' : `${twice} times`}: all count`);
   return catalogue.withColumns(added, `${caller}: E(B-V) ${shownReddening(ebv)} mag, ${law}, R_V ${rV}`, {
     roles,
-    note: `${coefficients.join(', ')}; errors unchanged${again}`,
+    note: `${words.join(', ')}; errors unchanged`,
   });
 }
+
+/** Extinction of every star in Gaia's bands by its own colour, shape (n), and how many stars lie beyond the coefficients. */
+type GaiaLosses = Readonly<Record<GaiaBand, Float64Array>> & { readonly held: number };
+
+function gaiaLosses(
+  caller: string,
+  catalogue: Catalogue,
+  sign: 1 | -1,
+  dust: { at: (i: number) => number; rV: number; law: string },
+): GaiaLosses {
+  if (dust.rV !== 3.1)
+    throw new RangeError(`${caller}: colourTerms hold for rV 3.1 only, got ${dust.rV}; leave one of them out.`);
+  if (!catalogue.has('colour.BP-RP') && !(catalogue.has('magnitude.BP') && catalogue.has('magnitude.RP'))) {
+    throw new Error(
+      `${caller}: colourTerms need BP-RP, which ${catalogue.source} does not have. Give its role when reading.`,
+    );
+  }
+  const perReddening = a0PerReddening(caller, dust.rV, dust.law);
+  const n = catalogue.rowCount;
+  const losses = { G: new Float64Array(n), BP: new Float64Array(n), RP: new Float64Array(n) };
+  const bp = catalogue.has('magnitude.BP') ? catalogue.numbers('magnitude.BP') : null;
+  const rp = catalogue.has('magnitude.RP') ? catalogue.numbers('magnitude.RP') : null;
+  const colours = catalogue.has('colour.BP-RP') ? catalogue.numbers('colour.BP-RP') : null;
+  let held = 0;
+  for (let i = 0; i < n; i++) {
+    const a0 = perReddening * dust.at(i);
+    if (a0 < GAIA_A0_RANGE[0] || a0 > GAIA_A0_RANGE[1]) {
+      throw new RangeError(`${caller}: colourTerms hold for A0 0 to 5 mag, got ${a0.toPrecision(3)} in row ${i}.`);
+    }
+    const shown = colours !== null ? colours[i] : (bp as Float64Array)[i] - (rp as Float64Array)[i];
+    const colour = sign > 0 ? shown : intrinsicGaiaColour(shown, a0);
+    const inside = heldGaiaColour(colour);
+    if (inside !== colour && !Number.isNaN(colour)) held++;
+    for (const band of GAIA_BANDS) losses[band][i] = a0 * gaiaExtinctionRatio(band, inside, a0);
+  }
+  return { ...losses, held };
+}
+
+const GAIA_BANDS: readonly GaiaBand[] = ['G', 'BP', 'RP'];
 
 /** A name that no column has. */
 function freeName(wanted: string, taken: Set<string>): string {
@@ -92,14 +158,20 @@ function freeName(wanted: string, taken: Set<string>): string {
   return name;
 }
 
-/** Change of a magnitude or colour for each magnitude of E(B-V); null for other roles. */
-function perReddening(role: string, rV: number, ratio: (band: Band) => number): number | null {
+/** What extinction adds to a magnitude or colour of star i; null for other roles. */
+function changeOf(
+  role: string,
+  loss: (band: Band) => (i: number) => number,
+  ebv: (i: number) => number,
+): ((i: number) => number) | null {
   if (role.endsWith('.error')) return null;
-  if (role.startsWith('magnitude.')) return rV * ratio(role.slice(10) as Band);
+  if (role.startsWith('magnitude.')) return loss(role.slice(10) as Band);
   if (!role.startsWith('colour.')) return null;
   const { blue, red } = bandsOfColour(role.slice(7));
-  const excess = ratio(blue) - ratio(red);
-  return blue === 'B' && red === 'V' ? 1 : rV * excess;
+  const ofBlue = loss(blue);
+  const ofRed = loss(red);
+  // By definition, and free of rounding.
+  return blue === 'B' && red === 'V' ? ebv : (i) => ofBlue(i) - ofRed(i);
 }
 
 function reddeningOf(caller: string, catalogue: Catalogue, ebv: DereddenOptions['ebv']): number | ArrayLike<number> {
