@@ -128,6 +128,7 @@ function knownKernel(jupyter: JupyterModule, path: string): Kernel {
   first.socket.sendHighWaterMark = 0;
   const requestOf = (write: WriteDisplayData) => traceMessage(zeromq.Publisher.prototype, write).parent;
   const watch = watchCells(jupyter, first.socket, first.parent, requestOf);
+  watch.onCellStart(nameVariables);
   return {
     version: KNOWN_VERSION,
     mended: true,
@@ -184,16 +185,12 @@ function watchCells(
   const key = signingKey();
   let cell: CellRun = { cellId: null, code: null, deletedCells: [] };
   let cellRequest = importing.msg_id;
-  // The cell that imports the library began unseen, so its number is known only when it ends or the next one begins.
-  let unnumbered: { header: Header; cell: CellRun } | null = { header: importing, cell };
+  // The cell that imports the library began unseen: its number is known when it ends or the next one begins, its text when
+  // it is reported idle.
+  let unnumbered: { id: string; count: number | null } | null = { id: importing.msg_id, count: null };
 
   const publishInput = (parent: Header, code: string, count: number) => {
     if (key !== null) publish(socket, key, parent, 'execute_input', { code, execution_count: count });
-  };
-  const numberFirst = (count: number, code: string) => {
-    if (unnumbered === null) return;
-    publishInput(unnumbered.header, code, count);
-    unnumbered = null;
   };
 
   const server = jupyter.ZmqServer.prototype;
@@ -203,8 +200,9 @@ function watchCells(
       if (status === 'busy') requests.set(request.header.msg_id, request);
       else requests.delete(request.header.msg_id);
       if (cellRequest === request.header.msg_id) describeRun(cell, request);
-      if (unnumbered?.header.msg_id === request.header.msg_id) {
-        numberFirst(this.handler.execCount, String(request.content.code ?? ''));
+      if (unnumbered?.id === request.header.msg_id) {
+        publishInput(request.header, String(request.content.code ?? ''), unnumbered.count ?? this.handler.execCount);
+        unnumbered = null;
       }
     }
     publishStatus.call(this, status, request);
@@ -214,7 +212,7 @@ function watchCells(
   const handleExecuteImpl = handler.handleExecuteImpl;
   handler.handleExecuteImpl = function (request, ...rest) {
     const parent = requestOf(rest[1] as WriteDisplayData);
-    numberFirst(this.execCount, unnumbered?.cell.code ?? '');
+    if (unnumbered !== null) unnumbered.count ??= this.execCount;
     cell = { cellId: null, code: request.code, deletedCells: [] };
     cellRequest = parent.msg_id;
     const message = requests.get(parent.msg_id);
@@ -224,6 +222,25 @@ function watchCells(
     return handleExecuteImpl.call(this, request, ...rest);
   };
   return { currentCell: () => cell, onCellStart: (listener) => void listeners.push(listener) };
+}
+
+/**
+ * The kernel keeps the variables of earlier cells as properties of one object and rewrites their names, but forgets those in
+ * shorthand properties: `{ age }` fails where `{ age: age }` works. As globals they are found there too.
+ */
+function nameVariables(): void {
+  const { exports: variables } = (globalThis as { __tslab__?: { exports?: Record<string, unknown> } }).__tslab__ ?? {};
+  if (typeof variables !== 'object' || variables === null) return;
+  for (const name of Object.getOwnPropertyNames(variables)) {
+    if (name in globalThis) continue;
+    Object.defineProperty(globalThis, name, {
+      configurable: true,
+      get: () => variables[name],
+      set: (value: unknown) => {
+        variables[name] = value;
+      },
+    });
+  }
 }
 
 function describeRun(cell: CellRun, request: Message): void {

@@ -1,10 +1,11 @@
 """Runs cells in a real kernel and tells everything that came back.
 
 Reads one JSON object from stdin: {"cells": [cell, ...], "cwd": ..., "timeout": seconds, "linger": seconds}. A cell is
-{"code": ..., "cellId"?, "deletedCells"?, "interrupt"?: {"at": text, "times": n}}: the kernel is interrupted when an output of the cell
-holds the text `at`, and again each time it is seen, `times` in all. "queue": true sends every cell at once. "linger" waits
-after the last cell for outputs that come late. Writes one JSON object to stdout: {"cells": [{"status", "count", "reply",
-"messages": [{"type", "content"}]}], "ended": seconds or null} with the messages as they came.
+{"code": ..., "cellId"?, "deletedCells"?, "interrupt"?: {"at": text, "times": n}}: the kernel is interrupted when the cell prints
+the text `at`, and again each time it does, `times` in all. "queue": true sends every cell at once. "linger" waits
+after the last cell for outputs that come late. Writes one JSON object to stdout: {"cells": [{"status", "count",
+"messages": [{"type", "content"}]}], "ended": true, false or null} with the messages as they came; "shutdown": true asks the
+kernel to end, and "ended" then says whether it did so by itself within 20 s.
 """
 
 import json
@@ -18,7 +19,8 @@ from jupyter_client.manager import KernelManager
 def main():
     task = json.load(sys.stdin)
     manager = KernelManager(kernel_name=task.get("kernel", "tslab"))
-    manager.start_kernel(cwd=task["cwd"])
+    # What the kernel's process prints by itself must not mix with the answer.
+    manager.start_kernel(cwd=task["cwd"], stdout=sys.stderr)
     client = manager.client()
     client.start_channels()
     try:
@@ -55,6 +57,9 @@ def run(task, manager, client):
         sent.append(send(client, cell))
         if not task.get("queue"):
             wait_for(sent, sent[-1:], task, manager, client)
+        if sent[-1]["told"]["status"] == "error":
+            # The kernel drops what comes within 200 ms of an error.
+            time.sleep(0.4)
     wait_for(sent, sent, task, manager, client)
     return sent
 
@@ -94,9 +99,10 @@ def take_output(sent, manager, client, timeout=0.05):
             continue
         entry["told"]["messages"].append({"type": kind, "content": content, "afterIdle": entry["idle"]})
         interrupt = entry["cell"].get("interrupt")
-        if interrupt and entry["interrupts"] < interrupt.get("times", 1) and interrupt["at"] in json.dumps(content):
-            entry["interrupts"] += 1
-            manager.interrupt_kernel()
+        if interrupt and kind == "stream" and entry["interrupts"] < interrupt.get("times", 1):
+            if interrupt["at"] in content["text"]:
+                entry["interrupts"] += 1
+                manager.interrupt_kernel()
     return True
 
 
@@ -111,7 +117,7 @@ def shut_down(manager, client):
     client.shutdown()
     while manager.is_alive() and time.monotonic() - started < 20:
         time.sleep(0.02)
-    return time.monotonic() - started
+    return not manager.is_alive()
 
 
 if __name__ == "__main__":

@@ -63,11 +63,11 @@ export async function runCells(cells: readonly (string | Cell)[], options: RunOp
   return (await driveKernel(cells, options)).cells;
 }
 
-/** As runCells, and then asks the kernel to end: seconds that took. */
+/** As runCells, and then asks the kernel to end: whether it did by itself. */
 export async function runCellsAndEnd(
   cells: readonly (string | Cell)[],
   options: RunOptions = {},
-): Promise<{ cells: CellResult[]; ended: number }> {
+): Promise<{ cells: CellResult[]; ended: boolean }> {
   return driveKernel(cells, options, true);
 }
 
@@ -84,7 +84,7 @@ async function driveKernel(cells: readonly (string | Cell)[], options: RunOption
     shutdown,
   };
   const text = await runPython(inRoot('test', 'kernel', 'drive.py'), [], JSON.stringify(task));
-  const told = JSON.parse(text) as { cells: Pick<CellResult, 'status' | 'count' | 'messages'>[]; ended: number };
+  const told = JSON.parse(text) as { cells: Pick<CellResult, 'status' | 'count' | 'messages'>[]; ended: boolean };
   return { cells: told.cells.map(resultOf), ended: told.ended };
 }
 

@@ -26,6 +26,8 @@ export function figurePage(plotlyModule: unknown): FigurePage {
   const away = new WeakSet<Element>();
   const waiting = new WeakSet<Element>();
   const places = new WeakMap<HTMLElement, HTMLElement>();
+  // For figures that leave it open: greys that read on white and on black.
+  const plainAxis = { gridcolor: 'rgba(128,128,128,0.25)', zerolinecolor: 'rgba(128,128,128,0.5)' };
 
   const style = document.createElement('style');
   // On paper the still picture is right: its inks read on white whatever the theme of the page.
@@ -116,6 +118,7 @@ export function figurePage(plotlyModule: unknown): FigurePage {
     const themed = {
       paper_bgcolor: 'rgba(0,0,0,0)',
       plot_bgcolor: 'rgba(0,0,0,0)',
+      template: { layout: { xaxis: plainAxis, yaxis: plainAxis } },
       ...layout,
       font: { ...layout.font, color: ink },
       modebar: { bgcolor: 'rgba(0,0,0,0)', color: ink, activecolor: ink },
