@@ -96,7 +96,8 @@ describe('notebookFor', () => {
   });
 
   it('imports only what the library exports, and uses all of it', () => {
-    const [imports, ...cells] = codeOf(notebookFor({ title: 'T', source: 'f.csv', roles: complete, columns: [] }));
+    const whole = { ...complete, rightAscension: 'ra', declination: 'dec' };
+    const [imports, ...cells] = codeOf(notebookFor({ title: 'T', source: 'f.csv', roles: whole, columns: [] }));
     const names = (imports.match(/\{([^}]*)\}/)?.[1] ?? '')
       .split(',')
       .map((name: string) => name.trim())
