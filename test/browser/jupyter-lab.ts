@@ -1,6 +1,7 @@
 import { type ChildProcess, spawn } from 'node:child_process';
 import { mkdirSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { createServer } from 'node:net';
+import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Page } from 'playwright-core';
 import { build } from '../../kernel-lib/commands/build.mjs';
@@ -15,6 +16,7 @@ export interface Lab {
   readonly folder: string;
   /** Writes a notebook of code cells that were not run. */
   write(name: string, cells: readonly string[]): void;
+  writeRaw(name: string, notebook: object): void;
   /** The notebook as saved. */
   read(name: string): NotebookJson;
   /** Opens a notebook and waits until its kernel is idle. */
@@ -30,12 +32,14 @@ export async function startLab(): Promise<Lab> {
   const folder = mkdtempSync(join(results, 'lab-'));
   const port = await freePort();
   const address = `http://127.0.0.1:${port}`;
-  const server = startServer(folder, port);
+  const settings = mkdtempSync(join(tmpdir(), 'coeval-lab-'));
+  const server = startServer(folder, settings, port);
   await answers(server, `${address}/api/status`);
   return {
     address,
     folder,
     write: (name, cells) => writeFileSync(join(folder, name), JSON.stringify(notebookOf(cells))),
+    writeRaw: (name, notebook) => writeFileSync(join(folder, name), JSON.stringify(notebook)),
     read: (name) => JSON.parse(readFileSync(join(folder, name), 'utf8')) as NotebookJson,
     open: async (name, options) => {
       const opened = await openPage(options);
@@ -45,7 +49,7 @@ export async function startLab(): Promise<Lab> {
     },
     close: async () => {
       await ended(server.child);
-      rmSync(folder, { recursive: true, force: true });
+      for (const made of [folder, settings]) rmSync(made, { recursive: true, force: true });
     },
   };
 }
@@ -72,6 +76,32 @@ export async function notebookReady(page: Page): Promise<void> {
     undefined,
     { timeout: 120_000 },
   );
+}
+
+/** Runs all cells of the notebook in front and waits until they have ended. */
+export async function runAll(page: Page): Promise<void> {
+  await labCommand(page, 'notebook:run-all-cells');
+  await allNumbered(page);
+}
+
+/** Makes a cell the active one, runs it and waits until it has ended. */
+export async function runCell(page: Page, index: number): Promise<void> {
+  await page.locator('.jp-Notebook .jp-Cell .jp-InputPrompt').nth(index).click();
+  await labCommand(page, 'notebook:run-cell');
+  await allNumbered(page);
+}
+
+/** A cell that waits or runs has a star for its number. */
+async function allNumbered(page: Page): Promise<void> {
+  await page.waitForFunction(
+    () => {
+      const prompts = Array.from(document.querySelectorAll('.jp-CodeCell .jp-InputPrompt'), (p) => p.textContent ?? '');
+      return prompts.length > 0 && prompts.every((text) => /\d/.test(text));
+    },
+    undefined,
+    { timeout: 60_000 },
+  );
+  await notebookReady(page);
 }
 
 interface LabApp {
@@ -101,8 +131,13 @@ interface Server {
   readonly log: string[];
 }
 
-function startServer(folder: string, port: number): Server {
-  const env = jupyterEnvironment();
+function startServer(folder: string, settings: string, port: number): Server {
+  // What is chosen in a test, a theme say, must not stay chosen.
+  const env = {
+    ...jupyterEnvironment(),
+    JUPYTERLAB_SETTINGS_DIR: join(settings, 'settings'),
+    JUPYTERLAB_WORKSPACES_DIR: join(settings, 'workspaces'),
+  };
   mkdirSync(env.JUPYTER_RUNTIME_DIR, { recursive: true });
   const parameters = [
     ...['-m', 'jupyterlab', '--no-browser', '--allow-root', '--ip=127.0.0.1', `--port=${port}`],
