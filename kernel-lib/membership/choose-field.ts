@@ -12,10 +12,14 @@ export function componentNumbers(stars: Stars): number {
   return (stars.useParallax ? 9 : 5) + stars.classes;
 }
 
-/** Bayesian information criterion; lower is better. Source: Schwarz 1978, Ann. Stat. 6, 461. */
+/**
+ * Bayesian information criterion; lower is better. The cluster's shares of the classes of error size count as one number: they
+ * scatter about one share, and a count of each would hide a small cluster in a large field.
+ * Source: Schwarz 1978, Ann. Stat. 6, 461.
+ */
 export function informationCriterion(stars: Stars, mixture: Mixture): number {
   const { cluster, field } = mixture;
-  const ofCluster = cluster === null ? 0 : cluster.parameters.length + stars.classes;
+  const ofCluster = cluster === null ? 0 : cluster.parameters.length + 1;
   const numbers = field.components * componentNumbers(stars) + ofCluster;
   return numbers * Math.log(stars.count) - 2 * mixture.logLikelihood;
 }

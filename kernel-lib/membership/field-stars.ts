@@ -37,8 +37,9 @@ const LEAST_FIELD_DISPERSION = 7;
 const LEAST_MOTION_SPREAD = 0.1;
 const MOST_MOTION_FLOOR = 0.5;
 const LEAST_PARALLAX_SPREAD = 0.03;
-/** Members of a class that its share is drawn toward the overall share with. */
-const CLASS_SHRINKAGE = 10;
+/** Stars that a class's share is drawn toward the overall share with. More than about one biases the count where the
+ * cluster's magnitudes are not the field's. */
+const CLASS_SHRINKAGE = 0.5;
 const NORM = (2 * Math.PI) ** -1.5;
 
 /**
