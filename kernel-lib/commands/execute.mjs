@@ -64,10 +64,14 @@ export async function executeNotebook(source, output, { progress, isTerminal = p
   const env = jupyterEnvironment();
   mkdirSync(env.JUPYTER_RUNTIME_DIR, { recursive: true });
   const child = spawn(venvPython, [runner, source, output], { env, stdio: ['ignore', 'pipe', 'pipe'] });
-  // The runner gets a terminal's Ctrl-C itself, ends its kernel and saves; this process waits for that.
-  const pass = (signal) => child.kill(signal === 'SIGINT' ? 'SIGINT' : 'SIGTERM');
-  process.on('SIGINT', pass);
-  process.on('SIGTERM', pass);
+  // Ctrl-C on a terminal reaches the runner too, which leaves it to this one signal to end its kernel and save.
+  let interrupted = false;
+  const stop = () => {
+    if (!interrupted) child.kill('SIGTERM');
+    interrupted = true;
+  };
+  process.on('SIGINT', stop);
+  process.on('SIGTERM', stop);
   const complaints = [];
   let last = null;
   createInterface({ input: child.stderr }).on('line', (line) => complaints.push(line));
@@ -80,8 +84,8 @@ export async function executeNotebook(source, output, { progress, isTerminal = p
     child.on('error', reject);
     child.on('close', resolve);
   });
-  process.removeListener('SIGINT', pass);
-  process.removeListener('SIGTERM', pass);
+  process.removeListener('SIGINT', stop);
+  process.removeListener('SIGTERM', stop);
   watch.end();
   if (last?.event === 'done') return { notebook: readNotebook(output), elapsed: watch.elapsed() };
   if (last?.event === 'failed') {
@@ -92,7 +96,10 @@ export async function executeNotebook(source, output, { progress, isTerminal = p
   }
   if (last?.event === 'stopped') {
     const place = last.index >= 0 ? ` in cell ${watch.numberOf(last.index)} (${headingOf(cells, last.index)})` : '';
-    throw new Problem(`the run ended early${place}: ${last.message}. What was done is in ${output}`);
+    throw new Problem(
+      `the run ended early${place}: ${interrupted ? 'interrupted' : last.message}. What was done is in ${output}`,
+    );
   }
+  if (interrupted) throw new Problem('interrupted before the first cell.');
   throw new Problem(`the notebook could not be run:\n${complaints.slice(-12).join('\n')}`);
 }

@@ -7,6 +7,7 @@ starts, then {"event": "done"}, {"event": "failed", "index": i} or {"event": "st
 in every case, and signed, so that JupyterLab trusts the figures in it.
 """
 
+import asyncio
 import json
 import os
 import signal
@@ -30,12 +31,22 @@ def save(notebook, path):
     NotebookNotary().sign(notebook)
 
 
-def interrupt(*_):
-    raise KeyboardInterrupt
+async def run(client):
+    """Executes, until the end or SIGTERM. Ctrl-C on a terminal reaches this process too; whoever started it decides."""
+    loop = asyncio.get_running_loop()
+    task = asyncio.ensure_future(client.async_execute())
+
+    def listen(**_):
+        loop.add_signal_handler(signal.SIGTERM, task.cancel)
+        loop.add_signal_handler(signal.SIGINT, lambda: None)
+
+    listen()
+    # Starting the kernel sets handlers that end it under a running cell; these take their place.
+    client.on_notebook_start = listen
+    await task
 
 
 def main(source, output):
-    signal.signal(signal.SIGTERM, interrupt)
     notebook = nbformat.read(source, as_version=4)
     state = {"index": -1}
 
@@ -53,14 +64,14 @@ def main(source, output):
     )
     event = {"event": "done"}
     try:
-        client.execute()
+        asyncio.run(run(client))
     except CellExecutionError:
         event = {"event": "failed", "index": state["index"]}
     except DeadKernelError:
         event = {"event": "stopped", "index": state["index"], "message": "the kernel died"}
-    except KeyboardInterrupt:
+    except (asyncio.CancelledError, KeyboardInterrupt):
         event = {"event": "stopped", "index": state["index"], "message": "interrupted"}
-    except (RuntimeError, TimeoutError) as error:
+    except Exception as error:
         event = {"event": "stopped", "index": state["index"], "message": str(error) or type(error).__name__}
     save(notebook, output)
     tell(**event)

@@ -1,3 +1,4 @@
+import { spawn } from 'node:child_process';
 import { existsSync, lstatSync, mkdirSync, readFileSync, realpathSync, symlinkSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
@@ -61,6 +62,36 @@ describe('executeNotebook', () => {
     await expect(executeNotebook(source, output, { progress: recordedProgress() })).rejects.toThrow(
       /ended early in cell 1 \(A field\): the kernel died/,
     );
+  });
+});
+
+describe('an interrupted run', () => {
+  const script = `
+    import { executeNotebook } from ${JSON.stringify(inRoot('kernel-lib', 'commands', 'execute.mjs'))};
+    const [source, output] = process.argv.slice(1);
+    const progress = { line: (text) => console.log(text), update() {}, end() {} };
+    await executeNotebook(source, output, { progress, isTerminal: false }).catch((error) => console.log(error.message));
+  `;
+
+  it('ends its kernel, says where it was and keeps what ran', async () => {
+    const source = saved(
+      'long.ipynb',
+      '# Read',
+      "console.log('read')",
+      '# Wait',
+      'await new Promise((r) => setTimeout(r, 1e6))',
+    );
+    const output = join(scratch, 'out', 'long.ipynb');
+    const child = spawn(process.execPath, ['--input-type=module', '-e', script, source, output]);
+    let said = '';
+    let asked = false;
+    child.stdout.on('data', (data) => {
+      said += data;
+      if (!asked && said.includes('cell 2 of 2')) asked = child.kill('SIGINT');
+    });
+    expect(await new Promise((resolve) => child.on('close', resolve))).toBe(0);
+    expect(said).toContain(`the run ended early in cell 2 (Wait): interrupted. What was done is in ${output}`);
+    expect(JSON.stringify(JSON.parse(readFileSync(output, 'utf8')).cells[1].outputs)).toContain('read');
   });
 });
 
