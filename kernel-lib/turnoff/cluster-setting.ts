@@ -172,8 +172,11 @@ function placeByParallax(caller: string, members: Catalogue, stars: DiagramStars
   };
 }
 
+/** Isochrone and sequence of an age, given as log10 of years; null where the isochrone has no main sequence. */
+export type SequenceMaker = (logAge: number) => { readonly isochrone: Isochrone; readonly sequence: Sequence | null };
+
 /** Makes sequences by age and keeps them. */
-export function sequenceMaker(setting: ClusterSetting, metallicity = setting.metallicity) {
+export function sequenceMaker(setting: ClusterSetting, metallicity: number = setting.metallicity): SequenceMaker {
   const { blue, red } = bandsOfColour(setting.stars.colourName);
   const band = setting.stars.magnitudeBand;
   const bands = [...new Set([blue, red, band])];

@@ -65,7 +65,7 @@ export function estimateReddening(members: Catalogue, options: EstimateReddening
     const { sequence } = sequenceAt(logAge);
     if (sequence !== null) {
       const start = ridgeReddening(setting, sequence, bright, low, high);
-      const nodes = modulus.error > 0 ? NODES : [0];
+      const nodes = modulus.error > 0.004 ? NODES : [0];
       for (const node of nodes) {
         const dm = modulus.value + node * modulus.error;
         const peak = reddeningPeak(setting, ready, sequence, region, work, start, dm, low, high);

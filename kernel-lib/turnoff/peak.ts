@@ -41,11 +41,12 @@ export function findPeak(f: (x: number) => number, start: number, step: number, 
     return { at: x, sigma: Number.isFinite(top) ? h : Number.NaN, top, inside: x - h > low && x + h < high };
   }
   const shift = (0.5 * h * (left - right)) / bend;
-  const sigma = h / Math.sqrt(-bend);
+  // On a plateau the parabola means nothing: neither its vertex nor its height may leave what was seen.
+  const trusted = Math.abs(shift) <= h;
   return {
-    at: x + Math.max(-h, Math.min(h, shift)),
-    sigma,
-    top: top - 0.125 * ((right - left) ** 2 / bend),
+    at: trusted ? x + shift : x,
+    sigma: Math.min(h / Math.sqrt(-bend), (high - low) / 2),
+    top: trusted ? top - (right - left) ** 2 / (8 * bend) : top,
     inside: x - h > low && x + h < high,
   };
 }

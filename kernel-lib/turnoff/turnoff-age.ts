@@ -16,6 +16,7 @@ import {
   settleCluster,
 } from './cluster-setting';
 import { UNEVOLVED_BELOW } from './main-sequence-fit';
+import { findPeak } from './peak';
 import { makeWorkspace, type ReadyStars, type Region, readyStars, sequenceLogLikelihood } from './sequence-likelihood';
 
 /** What `turnoffAge` takes. */
@@ -63,9 +64,17 @@ const STEP_COARSE = 0.05;
 const STEP_FINE = 0.0125;
 /** Fall of log-likelihood below the best at which an age is no longer looked at closely. */
 const FAR_BELOW = 14;
-/** Nodes, in standard deviations, for distance and reddening. */
-const NODES = [-2, -1, 0, 1, 2];
+/** Gauss-Hermite nodes, in standard deviations, for distance and metallicity. */
+const HERMITE = [
+  { at: -Math.sqrt(3), weight: 1 / 6 },
+  { at: 0, weight: 2 / 3 },
+  { at: Math.sqrt(3), weight: 1 / 6 },
+];
 const FEWEST = 8;
+/** Errors of distance and reddening below this, mag, do not move the age. */
+const NEGLIGIBLE = 0.002;
+/** Points of the closest look. */
+const CLOSE = 33;
 
 /**
  * Age of a cluster from its turnoff region: for each age the main sequence and subgiants of the isochrone, with unresolved binaries, are
@@ -109,11 +118,27 @@ export function turnoffAge(members: Catalogue, options: TurnoffAgeOptions): Turn
   const at = (sequenceAt: typeof central, logAge: number, e: number, dm: number) =>
     oneLikelihood(setting, ready, region, work, sequenceAt(logAge).sequence, e, dm);
 
+  // At each age the reddening is free within its error: the stars about the turnoff often know it better than it was given.
+  const overReddening = (sequenceAt: typeof central, logAge: number, dm: number): number => {
+    if (!(ebv.error > NEGLIGIBLE)) return at(sequenceAt, logAge, ebv.value, dm);
+    const prior = (e: number) => -0.5 * ((e - ebv.value) / ebv.error) ** 2;
+    const reach = 4 * ebv.error;
+    const peak = findPeak(
+      (e) => at(sequenceAt, logAge, e, dm) + prior(e),
+      ebv.value,
+      ebv.error / 2,
+      ebv.value - reach,
+      ebv.value + reach,
+    );
+    return Number.isFinite(peak.top)
+      ? peak.top + Math.log((peak.sigma || ebv.error) / ebv.error)
+      : Number.NEGATIVE_INFINITY;
+  };
+
   const coarse = steps(low, high, STEP_COARSE);
   const first = coarse.map((a, i) => {
-    onProgress?.(i, 3 * coarse.length);
-    // One node each side, so that a poor first idea of the reddening does not hide the age.
-    return Math.max(...[-1, 0, 1].map((n) => at(central, a, ebv.value + n * ebv.error, modulus.value)));
+    onProgress?.(i, 2 * coarse.length);
+    return overReddening(central, a, modulus.value);
   });
   const top = Math.max(...first);
   if (!Number.isFinite(top)) {
@@ -126,22 +151,32 @@ export function turnoffAge(members: Catalogue, options: TurnoffAgeOptions): Turn
     high,
     coarse[coarse.length - 1 - [...first].reverse().findIndex((v) => v > top - FAR_BELOW)] + STEP_COARSE,
   );
-  const fine = steps(from, to, Math.max(STEP_FINE, (to - from) / 120));
-  const ebvNodes = ebv.error > 0 ? NODES : [0];
-  const modulusNodes = modulus.error > 0 ? NODES : [0];
-  const logDensity = fine.map((a, i) => {
-    const terms: number[] = [];
-    for (const { sequenceAt, weight } of makers) {
-      for (const n of ebvNodes) {
-        for (const m of modulusNodes) {
-          const value = at(sequenceAt, a, ebv.value + n * ebv.error, modulus.value + m * modulus.error);
-          terms.push(value - 0.5 * (n * n + m * m) + Math.log(weight));
-        }
-      }
-    }
-    onProgress?.(coarse.length + Math.round((2 * coarse.length * (i + 1)) / fine.length), 3 * coarse.length);
-    return logSum(terms);
+  const modulusNodes = modulus.error > NEGLIGIBLE ? HERMITE : [{ at: 0, weight: 1 }];
+  const densityAt = (a: number) =>
+    logSum(
+      makers.flatMap(({ sequenceAt, weight }) =>
+        modulusNodes.map(
+          (m) => overReddening(sequenceAt, a, modulus.value + m.at * modulus.error) + Math.log(weight * m.weight),
+        ),
+      ),
+    );
+  let fine = steps(from, to, Math.max(STEP_FINE, (to - from) / 120));
+  const half = coarse.length + Math.round(coarse.length / 2);
+  let logDensity = fine.map((a, i) => {
+    onProgress?.(coarse.length + Math.round((0.5 * coarse.length * (i + 1)) / fine.length), 2 * coarse.length);
+    return densityAt(a);
   });
+  // Many stars pin the age to less than a step: then look again, closely, where it lies.
+  for (let round = 0; round < 2; round++) {
+    const best = Math.max(...logDensity);
+    const first = logDensity.findIndex((v) => v > best - 10);
+    const last = logDensity.length - 1 - [...logDensity].reverse().findIndex((v) => v > best - 10);
+    if (last - first > 16) break;
+    fine = evenly(fine[Math.max(0, first - 1)], fine[Math.min(fine.length - 1, last + 1)], CLOSE);
+    logDensity = fine.map((a) => densityAt(a));
+    onProgress?.(half + Math.round((round + 1) * 0.25 * coarse.length), 2 * coarse.length);
+  }
+  onProgress?.(2 * coarse.length, 2 * coarse.length);
   return conclude(setting, ready, fine, logDensity, [low, high], ebv.value);
 }
 
@@ -158,21 +193,22 @@ function oneLikelihood(
   return sequenceLogLikelihood(ready, sequence, e * setting.perExcess, dm + e * setting.perExtinction, region, work);
 }
 
-/** Three-point Gauss-Hermite nodes of the metallicity, held within the model's range. */
+/** Nodes of the metallicity, held within the model's range. */
 function metallicityNodes(setting: ClusterSetting, error: number): { metallicity: number; weight: number }[] {
   const { metallicity, model } = setting;
   if (!(error > 0)) return [{ metallicity, weight: 1 }];
   const [low, high] = model.metallicityRange;
-  const hold = (m: number) => Math.min(Math.max(m, low), high);
-  return [
-    { metallicity: hold(metallicity - Math.sqrt(3) * error), weight: 1 / 6 },
-    { metallicity, weight: 2 / 3 },
-    { metallicity: hold(metallicity + Math.sqrt(3) * error), weight: 1 / 6 },
-  ];
+  return HERMITE.map(({ at, weight }) => ({
+    metallicity: Math.min(Math.max(metallicity + at * error, low), high),
+    weight,
+  }));
 }
 
 function steps(low: number, high: number, step: number): number[] {
-  const count = Math.max(2, Math.round((high - low) / step) + 1);
+  return evenly(low, high, Math.max(2, Math.round((high - low) / step) + 1));
+}
+
+function evenly(low: number, high: number, count: number): number[] {
   return Array.from({ length: count }, (_, i) => low + ((high - low) * i) / (count - 1));
 }
 
