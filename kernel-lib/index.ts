@@ -1,6 +1,7 @@
 import './notebook/install';
 
 // catalogue
+export type { ColumnTable } from 'arquero';
 export { Catalogue, type CatalogueParts } from './catalogue/catalogue';
 export type { ColumnData, ColumnInfo, ColumnKind, ColumnValues } from './catalogue/columns';
 export { type AstrometricNoiseOptions, astrometricNoise } from './catalogue/cuts/astrometric-noise';

@@ -1,8 +1,10 @@
-import { readdirSync, readFileSync, statSync } from 'node:fs';
+import { mkdtempSync, readdirSync, readFileSync, statSync } from 'node:fs';
+import { tmpdir } from 'node:os';
 import { dirname, join, relative, resolve, sep } from 'node:path';
 import { fileURLToPath } from 'node:url';
-import { build } from 'esbuild';
 import { describe, expect, it } from 'vitest';
+import * as coeval from '../kernel-lib';
+import { browserFace, bundleForBrowser } from '../kernel-lib/commands/build.mjs';
 
 const LIBRARY = resolve(dirname(fileURLToPath(import.meta.url)), '../kernel-lib');
 
@@ -107,31 +109,18 @@ describe('rooms', () => {
   });
 
   it('the pure rooms bundle for a browser, with nothing of Node in them', async () => {
-    const result = await build({
-      entryPoints: [join(LIBRARY, 'browser.ts')],
-      bundle: true,
-      write: false,
-      platform: 'browser',
-      format: 'esm',
-      target: 'es2022',
-      alias: {},
-      logLevel: 'silent',
-      plugins: [
-        {
-          name: 'browser-files',
-          setup(b) {
-            b.onResolve({ filter: /\/files$/ }, (a) =>
-              roomOf(a.importer) === 'catalogue' || a.importer.endsWith('browser.ts')
-                ? { path: join(LIBRARY, 'catalogue/files-browser.ts') }
-                : undefined,
-            );
-          },
-        },
-      ],
-    });
-    expect(result.errors).toEqual([]);
-    const text = result.outputFiles[0].text;
+    const face = browserFace(readFileSync(join(LIBRARY, 'index.ts'), 'utf8'));
+    expect(face).toMatch(/turnoffAge/);
+    expect(face).not.toMatch(/notebook|report/);
+    const file = join(mkdtempSync(join(tmpdir(), 'coeval-rooms-')), 'coeval.mjs');
+    await bundleForBrowser(face, LIBRARY, file, 'silent');
+    const text = readFileSync(file, 'utf8');
     expect(text.length).toBeGreaterThan(50_000);
-    expect(text).not.toMatch(/from\s*["']node:/);
+    expect(text).not.toMatch(/from\s*["']node:|\brequire\(["']node:/);
+  });
+
+  it('the public face is what was decided', () => {
+    // A new name is a decision: add it here when you export it.
+    expect(Object.keys(coeval).sort()).toMatchSnapshot();
   });
 });
