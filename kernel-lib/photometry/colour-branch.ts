@@ -33,8 +33,10 @@ export function colourBranch(colour: (logTeff: number) => number, low: number, h
   const atHot = colour(hotEnd);
   return {
     range: [Math.min(atCool, atHot), Math.max(atCool, atHot)],
-    logTeff(value) {
-      if (!(sign * (value - atCool) >= 0 && sign * (atHot - value) >= 0)) return Number.NaN;
+    logTeff(given) {
+      // Rounding may carry a colour just outside a range that it came from.
+      if (!(sign * (given - atCool) >= -1e-9 && sign * (atHot - given) >= -1e-9)) return Number.NaN;
+      const value = sign * (given - atCool) < 0 ? atCool : sign * (atHot - given) < 0 ? atHot : given;
       let a = first;
       let b = last;
       while (b - a > 1) {

@@ -12,7 +12,7 @@ export interface DwarfPoints {
  * @param name    a column of DWARF_COLUMNS
  * @param through types to keep, all by default; later types than this one are left out
  * @returns shape (n) each, cool to hot
- * @example dwarfPoints('B-V').values.length // => 90
+ * @example dwarfPoints('B-V').values.length // => 86
  */
 export function dwarfPoints(name: DwarfColumn): DwarfPoints {
   const k = DWARF_COLUMNS.indexOf(name) + 1;

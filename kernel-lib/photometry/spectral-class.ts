@@ -28,8 +28,13 @@ function typeList(text: string): readonly TypeTemperature[] {
 
 const DWARFS: readonly TypeTemperature[] = DWARF_ROWS.map((row) => ({ type: row[0], temperature: row[1] }));
 
-/** Drilling & Landolt 2000, in Allen's Astrophysical Quantities, 4th edition, Table 15.7; from memory. */
-const GIANTS = typeList('G5 5050, G8 4800, K0 4660, K2 4390, K5 4050, M0 3690, M2 3540, M5 3380');
+/**
+ * Drilling & Landolt 2000, in Allen's Astrophysical Quantities, 4th edition, Table 15.7; F5 and G0 Schmidt-Kaler 1982, Landolt-Boernstein
+ * VI/2b; F0 as a dwarf. From memory.
+ */
+const GIANTS = typeList(
+  'F0 7220, F5 6470, G0 5850, G5 5050, G8 4800, K0 4660, K2 4390, K5 4050, M0 3690, M2 3540, M5 3380',
+);
 const SUPERGIANTS = typeList(
   'O9 32000, B2 17600, B5 13600, B8 11100, A0 9980, A2 9380, A5 8610, F0 7460, F2 7030, F5 6370, F8 5750, G0 5370, G2 5190, G5 4930, ' +
     'G8 4700, K0 4550, K2 4310, K5 3990, M0 3620, M2 3370, M5 2880',
@@ -59,8 +64,8 @@ const MARGIN = 0.04;
 /**
  * Spectral class of a star of a temperature.
  * @param temperature effective, K
- * @param options     luminosityClass: V (default), III or I; when given it is written behind the class. Giants hotter than G5 are classed
- *   as dwarfs, from whom they differ by less than a subclass.
+ * @param options     luminosityClass: V (default), III or I; when given it is written behind the class. Giants hotter than F0 are classed
+ *   as dwarfs.
  * @returns such as 'G2' or 'K0III', the nearest type in log temperature: for dwarfs those of the table (O3 to M9.5, halves where it has them),
  *   for others whole subclasses; '' when the temperature is missing or outside the types
  * @throws TypeError when the temperature is no number, for an unknown option or class

@@ -1,6 +1,6 @@
 import { BAND_NAMES, type Band } from '../../quantity/band';
 import { HIPPARCOS_RANGE, hipparcosMinusV } from '../hipparcos-magnitude';
-import { type BandLight, bandLight, gridLogTeff } from '../light-table';
+import { type BandLight, bandLight, GRID_START, GRID_STEP, gridLogTeff } from '../light-table';
 import { blend } from './blend';
 import { type Colours, corrections, mapColours } from './colours';
 import { dwarfLevel } from './dwarf-level';
@@ -73,15 +73,10 @@ function build(): Readonly<Record<Band, BandLight>> {
       BAND_NAMES.map((band) => {
         const nodes =
           band === 'Hp' ? hipparcosNodes(rows) : [0, 1, 2, 3, 4, 5].map((k) => corrected.map((row) => row[k][band]));
-        return [
-          band,
-          bandLight({
-            terms: nodes,
-            low: COOLEST[band],
-            lowGiant: COOLEST_GIANT_IN[band] ?? COOLEST_GIANT,
-            high: HOTTEST,
-          }),
-        ];
+        const low = COOLEST[band];
+        const lowGiant = COOLEST_GIANT_IN[band] ?? COOLEST_GIANT;
+        const terms = nodes.map((values, k) => filled(values, k < 3 ? low : lowGiant));
+        return [band, bandLight({ terms, low, lowGiant, high: HOTTEST })];
       }),
     ) as Record<Band, BandLight>,
   );
@@ -101,4 +96,16 @@ function hipparcosNodes(rows: readonly (readonly Colours[])[]): number[][] {
       return c.bcV - slope(row[0].bv) * c.bv;
     }),
   );
+}
+
+/** Nodes below the range of a band, where relations may have no value, held at the first of the range: splines need a number in each. */
+function filled(values: readonly number[], low: number): number[] {
+  // Four knots reach into the range from below.
+  const first = Math.max(0, Math.floor((low - GRID_START) / GRID_STEP) - 4);
+  const held = values.map((v, i) => (i < first || Number.isNaN(v) ? Number.NaN : v));
+  const start = held.findIndex((v) => !Number.isNaN(v));
+  if (start > first + 4 || held.slice(start).some(Number.isNaN)) {
+    throw new Error('compositeLight: a relation has no value inside the range of its band.');
+  }
+  return held.map((v, i) => (i < start ? held[start] : v));
 }

@@ -13,11 +13,12 @@ function coordinate(logTeff: number): number {
 /** How far the smooth curve may stray from a point of the table, mag. */
 type Tolerance = (logTeff: number) => number;
 
-const COLOUR: Tolerance = (t) => (Math.abs(t - 3.761) < 0.012 ? 0.012 : t > 3.484 ? 0.027 : t > 3.46 ? 0.06 : 0.25);
+const COLOUR: Tolerance = (t) =>
+  Math.abs(t - 3.761) < 0.012 ? 0.012 : t > 3.484 ? 0.027 : t > 3.46 ? 0.06 : t > 3.43 ? 0.12 : 0.25;
 const VISUAL: Tolerance = (t) => Math.min(COLOUR(t), 0.06);
 const INFRARED: Tolerance = (t) => (t > 3.46 ? 0.012 : 0.02);
 const CORRECTION: Tolerance = (t) =>
-  Math.abs(t - 3.761) < 0.012 ? 0.006 : t > 4.1 ? 0.075 : t > 3.58 ? 0.025 : t > 3.46 ? 0.05 : 0.15;
+  Math.abs(t - 3.761) < 0.012 ? 0.006 : t > 4.1 ? 0.05 : t > 3.58 ? 0.025 : t > 3.46 ? 0.05 : 0.15;
 
 const TOLERANCES: Readonly<Partial<Record<DwarfColumn, Tolerance>>> = {
   bcV: CORRECTION,
@@ -78,10 +79,10 @@ function withGaiaHotEnd(
   transformation: (vi: number) => number,
   vi: (logTeff: number) => number,
 ): (logTeff: number) => number {
-  const at = 4;
+  const at = 3.985;
   const offset = smoothDwarf(name, at) - transformation(vi(at));
   return (t) => {
-    const w = blend(t, 3.965, 4.029);
+    const w = blend(t, 3.94, 4.029);
     return (w < 1 ? (1 - w) * smoothDwarf(name, t) : 0) + (w > 0 ? w * (transformation(vi(t)) + offset) : 0);
   };
 }

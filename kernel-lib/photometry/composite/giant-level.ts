@@ -1,13 +1,7 @@
 import { findRoot } from '../../numeric/find-root';
 import { naturalSpline } from '../../numeric/natural-spline';
 import { smoothWithin } from '../../numeric/smoothing-spline';
-import {
-  ALONSO_1999_BLUE,
-  ALONSO_1999_RED,
-  ALONSO_1999_UV_BLUE,
-  ALONSO_1999_UV_RED,
-  alonsoCorrection,
-} from '../scales/alonso-1999';
+import { alonsoCorrection } from '../scales/alonso-1999';
 import { bessellWoodCorrection, GIANT_COLOURS, vanBelleColour } from '../scales/cool-giants';
 import { flowerLogTeff, smoothFlowerCorrection } from '../scales/flower-1996';
 import { bpMinusRp, gMinusRp, gMinusV } from '../scales/gaia-from-johnson';
@@ -17,6 +11,7 @@ import { type ThetaRelation, thetaColour } from '../scales/theta-relation';
 import { blend } from './blend';
 import type { Colours } from './colours';
 import { smoothDwarf } from './dwarf-level';
+import { giantBV, giantUV } from './giant-ultraviolet';
 
 /** Greatest distance of the smooth curves from Bessell & Brett's colours, which are given to 0.01 or 0.05 mag. */
 const TOLERANCE = 0.03;
@@ -73,23 +68,9 @@ export function giantLevel(): (logTeff: number) => Colours {
   const vj = joined((t) => vk(t) - coolHK(t) - coolJH(t), warm('V-J'), 3.58, 3.65);
   const viOfVK = againstVK(2);
   const vi = (t: number) => viOfVK(johnsonVK(t));
-  const bv = joined(
-    flowerColour,
-    joined(
-      (t) => thetaColour(ALONSO_1999_RED, 10 ** t, 0),
-      (t) => thetaColour(ALONSO_1999_BLUE, 10 ** t, 0),
-      3.725,
-      3.755,
-    ),
-    3.585,
-    3.625,
-  );
-  const uv = joined(
-    (t) => thetaColour(ALONSO_1999_UV_RED, 10 ** t, 0),
-    (t) => thetaColour(ALONSO_1999_UV_BLUE, 10 ** t, 0),
-    3.699,
-    3.732,
-  );
+  const bluer = giantBV(0);
+  const uv = giantUV(0);
+  const bv = joined(flowerColour, bluer, 3.585, 3.625);
   const bcOfK = (t: number) => {
     const k = johnsonVK(t);
     return bessellWoodCorrection(jh(k) + hk(k)) - k;
@@ -111,7 +92,7 @@ export function giantLevel(): (logTeff: number) => Colours {
   return (t) => ({
     bcV: bc(t),
     bv: bv(t),
-    ub: uv(t) - bv(t),
+    ub: uv(t) - bluer(t),
     vr: rc(vi(t)),
     vi: vi(t),
     vj: vj(t),
@@ -132,8 +113,11 @@ function flowerColour(t: number): number {
 /** V-Rc from V-Ic as in dwarfs of the same V-Ic. */
 function rcOfIc(): Curve {
   const places = Array.from({ length: 80 }, (_, i) => 4.2 - 0.01 * i);
-  return naturalSpline(
-    places.map((t) => smoothDwarf('V-Ic', t)),
+  const vi = places.map((t) => smoothDwarf('V-Ic', t));
+  const spline = naturalSpline(
+    vi,
     places.map((t) => smoothDwarf('V-Rc', t)),
   );
+  // Giants too cool for any band are held at the reddest dwarf.
+  return (x) => spline(Math.min(x, vi[vi.length - 1]));
 }

@@ -24,7 +24,7 @@ export const FLOWER_LOG_TEFF: readonly [number, number] = [3.55, 4.72];
 
 /**
  * log Teff of main-sequence stars, subgiants and giants from B-V; no check of the range.
- * Source: Flower 1996, ApJ 469, 355, coefficients as corrected by Torres 2010, AJ 140, 1158, Table 2. From memory: they join within 0.002
+ * Source: Flower 1996, ApJ 469, 355, coefficients as corrected by Torres 2010, AJ 140, 1158, Table 2. From memory: they join within 0.025
  * mag where the pieces of the correction meet, and lie within 0.02 mag in B-V of the dwarf sequence from 5000 to 10000 K.
  */
 export function flowerLogTeff(bv: number): number {
