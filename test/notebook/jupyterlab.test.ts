@@ -53,6 +53,7 @@ describe('in JupyterLab', () => {
       (before) => getComputedStyle(document.querySelector('.xtick text') as Element).fill !== before,
       light,
     );
+    await page.locator('#jupyterlab-splash').waitFor({ state: 'detached' });
     await takePicture(page, 'jupyterlab-dark');
     // Nearly black on white, then nearly white on black.
     expect(light).toMatch(/^rgba?\((\d|[1-4]\d),/);
