@@ -126,7 +126,7 @@ export function fieldPass(
     for (let k = 0; k < components; k++) {
       const t = 10 * k;
       const r = kept[t] * scale;
-      if (r < 1e-12) continue;
+      if (r < 1e-9) continue;
       counts[row + k] += r;
       const y0 = kept[t + 7];
       const y1 = kept[t + 8];

@@ -69,7 +69,7 @@ const KNOWN: readonly (keyof FindMembersOptions)[] = [
 /** Stars that the search for the best start is done on, at most; the fit itself is finished on all stars. */
 const SEARCH_STARS = 40_000;
 /** And for the number of field components. */
-const FIELD_STARS = 12_000;
+const FIELD_STARS = 6000;
 /** Below this many stars nothing can be told from the field. */
 const FEWEST_STARS = 20;
 const MOST_COMPONENTS = 6;
@@ -132,8 +132,7 @@ export function findMembers(catalogue: Catalogue, options: FindMembersOptions = 
   let iterations = fit.iterations;
   if (settings.fieldComponents === undefined) fit = growField(sample, fit, 1, most + 1, 1);
 
-  const rival = fairRival(sample, alone, settings);
-  const evidence = informationCriterion(sample, rival) - informationCriterion(sample, fit);
+  const evidence = evidenceFor(sample, alone, fit, settings);
   progress(0.7, 'all stars');
   fit = fitMixture(stars, fit, settings.maxIterations, settings.tolerance, (k) =>
     progress(0.7 + (0.3 * k) / settings.maxIterations, 'all stars'),
@@ -221,11 +220,22 @@ function chooseRows(count: number, wanted: number, stream: ReturnType<typeof ran
   return all.slice(0, wanted).sort();
 }
 
-/** The best explanation without a cluster: the field alone, also with one component more in the cluster's stead. */
-function fairRival(stars: Stars, alone: Mixture, settings: Settings): Mixture {
-  const polished = fitMixture(stars, alone, settings.maxIterations, settings.tolerance);
-  const wider = fitMixture(stars, addComponent(stars, polished), settings.maxIterations, settings.tolerance);
-  return informationCriterion(stars, wider) < informationCriterion(stars, polished) ? wider : polished;
+/** Evidence beyond which a longer climb of the field alone cannot matter: at least this, and this for each star. */
+const AMPLE_EVIDENCE = 200;
+const AMPLE_EVIDENCE_PER_STAR = 0.02;
+
+/**
+ * By how much the cluster lowers the information criterion against the best explanation without one: the field alone, also
+ * with one component more in the cluster's stead.
+ */
+function evidenceFor(stars: Stars, alone: Mixture, fit: Mixture, settings: Settings): number {
+  const lowest = (...mixtures: Mixture[]) => Math.min(...mixtures.map((m) => informationCriterion(stars, m)));
+  const own = informationCriterion(stars, fit);
+  const wider = addComponent(stars, alone);
+  const quick = lowest(alone, wider) - own;
+  if (quick > Math.max(AMPLE_EVIDENCE, AMPLE_EVIDENCE_PER_STAR * stars.count)) return quick;
+  const polish = (m: Mixture) => fitMixture(stars, m, settings.maxIterations, settings.tolerance);
+  return lowest(polish(alone), polish(wider)) - own;
 }
 
 /** Why the fitted cluster is not to be believed, or null. */
