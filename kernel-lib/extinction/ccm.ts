@@ -16,7 +16,7 @@ export const ccm89: LawFormula = (micron, rV) => meanLaw(1 / micron, rV, A_OPTIC
 
 /**
  * O'Donnell 1994, ApJ 422, 158: new optical and near-ultraviolet coefficients (0.303 to 0.909 micron) for the law of Cardelli,
- * Clayton & Mathis 1989, which holds elsewhere (coefficients from memory). It differs from the older one by up to 0.04 A(V).
+ * Clayton & Mathis 1989, which holds elsewhere (coefficients from memory). It differs from the older one by up to 0.05 A(V).
  */
 export const odonnell94: LawFormula = (micron, rV) => meanLaw(1 / micron, rV, A_ODONNELL, B_ODONNELL);
 

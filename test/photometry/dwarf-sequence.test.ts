@@ -33,8 +33,10 @@ describe('dwarf sequence (Pecaut & Mamajek 2013, on-line version 2024.05.15)', (
       const implied = 4.74 - 2.5 * cell(row, 'logL') - cell(row, 'bcV');
       expect(Math.abs(implied - cell(row, 'absoluteV')), row[0]).toBeLessThan(0.021 + (own[row[0]] ?? 0));
       if (!Number.isNaN(cell(row, 'absoluteG')) && row[1] < 9000) {
-        // M_G is given from other stars than G - V: they agree to 0.06 mag.
-        expect(Math.abs(cell(row, 'absoluteV') + cell(row, 'G-V') - cell(row, 'absoluteG')), row[0]).toBeLessThan(0.06);
+        // M_G is given from other stars than G - V: they agree to 0.08 mag.
+        expect(Math.abs(cell(row, 'absoluteV') + cell(row, 'G-V') - cell(row, 'absoluteG')), row[0]).toBeLessThan(
+          0.085,
+        );
       }
     }
   });
