@@ -21,7 +21,7 @@ const OPTIONS = ['rV', 'law'];
  * @param band any band
  * @returns A(band)/A(V)
  * @throws TypeError for an unknown band, law or option, RangeError for rV out of range
- * @example bandExtinction('Ks') // => 0.118
+ * @example bandExtinction('Ks') // => 0.117
  * Sources: wavelengths in BANDS, laws in EXTINCTION_LAWS. One wavelength stands for the whole band: for the wide Gaia bands the true
  * ratio changes with the star's colour, see gaiaExtinction.
  */
@@ -40,7 +40,7 @@ export function bandExtinction(band: Band, options: BandExtinctionOptions = {}):
  * @param colour such as `BP-RP`
  * @returns E(colour)/E(B-V); exactly 1 for B-V
  * @throws TypeError for an unknown colour, law or option, RangeError for rV out of range
- * @example colourExcessRatio('BP-RP') // => 1.42
+ * @example colourExcessRatio('BP-RP') // => 1.426
  */
 export function colourExcessRatio(colour: ColourName, options: BandExtinctionOptions = {}): number {
   checkOptions('colourExcessRatio', options, OPTIONS);

@@ -45,7 +45,7 @@ export const LAW_NAMES: readonly LawName[] = Object.freeze(['CCM89', 'O94', 'F99
  * @param rV   A(V)/E(B-V), 2 to 6 (the laws were made from sight lines between 2.6 and 5.6)
  * @returns function of wavelength (micron) that gives A(lambda)/A(V); NaN outside the law's published wavelengths
  * @throws TypeError for an unknown name, RangeError for rV out of range
- * @example extinctionLaw('CCM89', 3.1)(0.44) // => 1.337
+ * @example extinctionLaw('CCM89', 3.1)(0.44) // => 1.3245
  * Sources: see EXTINCTION_LAWS.
  */
 export function extinctionLaw(name: LawName | (string & {}) = 'CCM89', rV = 3.1): (wavelengthMicron: number) => number {

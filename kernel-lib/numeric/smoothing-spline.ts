@@ -104,7 +104,7 @@ function bends(h: Float64Array, y: ArrayLike<number>, weights: ArrayLike<number>
  * @param tolerance positive, shape (n)
  * @returns function of a place
  * @throws RangeError as smoothingSpline, or when no weights bring it within the tolerance
- * @example smoothWithin([0, 1, 2, 3], [0, 1.1, 1.9, 3], [0.2, 0.2, 0.2, 0.2], 10)(3) // => 3.03
+ * @example smoothWithin([0, 1, 2, 3], [0, 1.1, 1.9, 3], [0.2, 0.2, 0.2, 0.2], 10)(3) // => 2.97
  */
 export function smoothWithin(
   x: ArrayLike<number>,

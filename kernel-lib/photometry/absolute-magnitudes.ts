@@ -30,7 +30,8 @@ export const DWARF_GRAVITY = 5;
  * @returns an array of shape (n) a band, mag; NaN for dwarfs cooler than 2380 K (U 2810, Rc G BP RP 2570, Hp 4170 K), giants cooler than
  *   3200 K (U 3800, Hp 4350 K: no colours of cooler ones were published in all bands), stars hotter than 57,000 K, [Fe/H] out of range, and
  *   wherever an input is NaN. White dwarfs are NaN where they lie outside these temperatures; within them they get the light of a dwarf of
- *   the same temperature, which is right to about 0.1 mag in V (0.3 in U) only, their lines being broad.
+ *   the same temperature, good for a sketch only: V to 0.1 mag, but B-V and BP-RP up to 0.2 mag too blue and U-B up to 0.5 mag too red (common
+ *   practice, no source).
  * @throws TypeError for an unknown option or band, RangeError when lengths differ
  * @example absoluteMagnitudes({ logL: [0], logTeff: [3.7613], logGravity: [4.438], bands: ['V'] }).V[0] // => 4.826
  * Sources: Pecaut & Mamajek 2013 and those named in the files of photometry/composite; M_bol of the Sun 4.74 (IAU 2015 Resolution B2).

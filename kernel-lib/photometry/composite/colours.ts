@@ -16,24 +16,21 @@ export interface Colours {
   readonly gRp: number;
 }
 
-/** Names of the fields, in a fixed order. */
-export const COLOUR_KEYS: readonly (keyof Colours)[] = [
-  'bcV',
-  'bv',
-  'ub',
-  'vr',
-  'vi',
-  'vj',
-  'vh',
-  'vk',
-  'gv',
-  'bpRp',
-  'gRp',
-];
-
-/** Each field of one or more records put through a function. */
-export function mapColours(f: (...values: number[]) => number, ...of: readonly Colours[]): Colours {
-  return Object.fromEntries(COLOUR_KEYS.map((key) => [key, f(...of.map((c) => c[key]))])) as unknown as Colours;
+/** Each field of two records put through a function. */
+export function mapColours(f: (x: number, y: number) => number, a: Colours, b: Colours): Colours {
+  return {
+    bcV: f(a.bcV, b.bcV),
+    bv: f(a.bv, b.bv),
+    ub: f(a.ub, b.ub),
+    vr: f(a.vr, b.vr),
+    vi: f(a.vi, b.vi),
+    vj: f(a.vj, b.vj),
+    vh: f(a.vh, b.vh),
+    vk: f(a.vk, b.vk),
+    gv: f(a.gv, b.gv),
+    bpRp: f(a.bpRp, b.bpRp),
+    gRp: f(a.gRp, b.gRp),
+  };
 }
 
 /** Bolometric corrections in all bands but Hp, mag. */

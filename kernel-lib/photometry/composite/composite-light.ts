@@ -59,12 +59,12 @@ function build(): Readonly<Record<Band, BandLight>> {
     const dwarf = dwarfs(t);
     const [d1, d2] = terms((f) => dwarfMetallicity(t, f));
     const hot = blend(t, 3.7, 3.85);
-    const none = mapColours(() => 0, dwarf);
+    const none = mapColours(() => 0, dwarf, dwarf);
     const giant = hot < 1 ? mapColours((g, d) => (1 - hot) * (g - d), giants(t), dwarf) : none;
     const [g1, g2] = terms((f) =>
       mapColours((g, d) => (1 - hot) * (g - d), giantMetallicity(t, f), dwarfMetallicity(t, f)),
     );
-    const supergiant = hot > 0 ? mapColours((s) => hot * s, supergiants(t)) : none;
+    const supergiant = hot > 0 ? mapColours((s) => hot * s, supergiants(t), dwarf) : none;
     return [dwarf, d1, d2, add(giant, supergiant), g1, g2];
   });
   const corrected = rows.map((row) => row.map(corrections));
