@@ -210,15 +210,22 @@ function watchCells(
 
   const handler = jupyter.JupyterHandlerImpl.prototype;
   const handleExecuteImpl = handler.handleExecuteImpl;
-  handler.handleExecuteImpl = function (request, ...rest) {
-    const parent = requestOf(rest[1] as WriteDisplayData);
-    if (unnumbered !== null) unnumbered.count ??= this.execCount;
+  const begin = (request: { code: string }, count: number, write: WriteDisplayData) => {
+    const parent = requestOf(write);
+    if (unnumbered !== null) unnumbered.count ??= count - 1;
     cell = { cellId: null, code: request.code, deletedCells: [] };
     cellRequest = parent.msg_id;
     const message = requests.get(parent.msg_id);
     if (message) describeRun(cell, message);
-    publishInput(parent, request.code, this.execCount + 1);
+    publishInput(parent, request.code, count);
     for (const listener of listeners) listener(cell);
+  };
+  handler.handleExecuteImpl = function (request, ...rest) {
+    try {
+      begin(request, this.execCount + 1, rest[1] as WriteDisplayData);
+    } catch {
+      // Nothing of ours may keep a cell from running.
+    }
     return handleExecuteImpl.call(this, request, ...rest);
   };
   return { currentCell: () => cell, onCellStart: (listener) => void listeners.push(listener) };

@@ -7,7 +7,7 @@ describe('in a real kernel', () => {
 
   beforeAll(async () => {
     cells = await runCells([
-      "import { breathe, interruptible } from 'coeval';",
+      "import { interruptible } from 'coeval'; const breathe = () => new Promise((r) => setImmediate(r));",
       {
         code: `const part = await interruptible(async (signal) => {
           let n = 0;

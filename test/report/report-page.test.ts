@@ -209,8 +209,7 @@ describe('an executed notebook', () => {
     const cells = ["import { Figure, measured } from 'coeval';", figure('one'), figure('two'), figure('three')];
     const book = notebook(
       text('# Executed'),
-      ...cells.map((source, i) => ({ ...code(source), id: `cell-${i}`, execution_count: null })),
-      { ...code("console.log('Result: 3 members')"), id: 'last', execution_count: null },
+      ...[...cells, "console.log('Result: 3 members')"].map((source) => ({ ...code(source), execution_count: null })),
     );
     const path = join(folder, name);
     writeFileSync(path, JSON.stringify({ ...book, metadata: { kernelspec }, cells: book.cells.map(withId) }));
