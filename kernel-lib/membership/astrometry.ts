@@ -133,6 +133,7 @@ export function readAstrometry(
 
   const centre = new Float64Array(3);
   const spread = new Float64Array(3);
+  const extent = new Float64Array(3);
   const width = new Float64Array(3);
   for (let d = 0; d < (useParallax ? 3 : 2); d++) {
     const sorted = new Float64Array(count);
@@ -140,8 +141,12 @@ export function readAstrometry(
     sorted.sort();
     centre[d] = sortedQuantile(sorted, 0.5);
     spread[d] = (sortedQuantile(sorted, 0.95) - sortedQuantile(sorted, 0.05)) / (2 * 1.6448536);
+    extent[d] = (sortedQuantile(sorted, 0.99) - sortedQuantile(sorted, 0.01)) / Math.sqrt(12);
     // A tenth more than what was seen: the next star may lie just outside.
     width[d] = count > 0 ? 1.1 * (sorted[count - 1] - sorted[0]) : 0;
+  }
+  if (useParallax && centre[2] < 0) {
+    notes.push('More than half of the parallaxes are negative: look at their unit, sign and zero point.');
   }
   const { errorClass, classes } = errorClasses(size);
   const uniformDensity = 1 / (width[0] * width[1] * (useParallax ? width[2] : Math.sqrt(2 * Math.PI)));
@@ -156,6 +161,7 @@ export function readAstrometry(
       uniformDensity,
       centre,
       spread,
+      extent,
       basis: ra === null || dec === null ? null : skyBasis(ra, dec, kept),
       radialVelocity: options.positions ? radialVelocities(catalogue, kept, notes) : null,
     },

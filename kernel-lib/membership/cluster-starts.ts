@@ -1,4 +1,5 @@
 import { KMS_PER_AU_PER_YEAR } from '../quantity/constants';
+import { sortedQuantile } from '../quantity/measured';
 import { checkOptions } from '../quantity/options';
 import type { RandomStream } from '../quantity/random';
 import type { ClusterModel } from './cluster-model';
@@ -36,6 +37,8 @@ export interface StartSettings {
 
 /** Velocity dispersion that a cluster may show, binaries and all, km/s (common practice, no source). */
 const MOST_DISPERSION = 3;
+/** And as a share of the extent of all stars in motion. */
+const MOST_OF_EXTENT = 0.4;
 /** A cluster's own spread in parallax, as a share of its parallax, at most. */
 const MOST_DEPTH = 0.15;
 
@@ -47,17 +50,7 @@ export function clusterStarts(stars: Stars, settings: StartSettings, stream: Ran
 
 function meanStarts(stars: Stars, settings: StartSettings, stream: RandomStream): ClusterStart[] {
   const motion = Math.min(stars.spread[0], stars.spread[1]);
-  const limitsAt = (parallax: number): DispersionLimits => {
-    const physical = (MOST_DISPERSION * Math.max(0, parallax)) / KMS_PER_AU_PER_YEAR;
-    const usual = stars.useParallax ? Math.min(0.2 * motion, Math.max(0.03 * motion, physical)) : 0.1 * motion;
-    const mostMotion = settings.dispersionLimit ?? usual;
-    return {
-      leastMotion: 1e-3 * mostMotion,
-      mostMotion,
-      leastParallax: 1e-5 * stars.spread[2],
-      mostParallax: Math.max(0.1 * stars.spread[2], MOST_DEPTH * Math.abs(parallax)),
-    };
-  };
+  const limitsAt = (parallax: number) => dispersionLimits(stars, parallax, settings.dispersionLimit);
   const start = (mean: readonly number[], width: number, depth: number, share: number): ClusterStart => {
     const limits = limitsAt(mean[2]);
     const w = Math.min(width, limits.mostMotion) ** 2;
@@ -74,10 +67,10 @@ function meanStarts(stars: Stars, settings: StartSettings, stream: RandomStream)
         "findMembers: with motion 'mean' the guess needs properMotionRa and properMotionDec, mas/yr.",
       );
     }
-    const plx = parallax ?? stars.centre[2];
-    const depth = parallax === undefined ? stars.spread[2] : 0.25 * stars.spread[2];
-    return [0.4, 1].map((f) =>
-      start([properMotionRa as number, properMotionDec as number, plx], 0.2 * f * motion, f * depth, 0.05),
+    const at = [properMotionRa as number, properMotionDec as number];
+    const parallaxes = parallax === undefined ? parallaxesNear(stars, at, 0.3 * motion) : [parallax];
+    return parallaxes.flatMap((plx) =>
+      [0.05, 0.2].map((f) => start([at[0], at[1], plx], f * motion, 0.1 * stars.spread[2], 0.05)),
     );
   }
   const out = densityPeaks(stars, settings.starts).map((peak) =>
@@ -94,6 +87,34 @@ function meanStarts(stars: Stars, settings: StartSettings, stream: RandomStream)
     out.push(start(mean, 0.1 * motion, 0.2 * stars.spread[2], 0.05));
   }
   return out;
+}
+
+/** How wide a cluster at that parallax may be: as its velocity dispersion allows, well below the field's spread. */
+function dispersionLimits(stars: Stars, parallax: number, given: number | undefined): DispersionLimits {
+  const spread = Math.min(stars.spread[0], stars.spread[1]);
+  const cap = MOST_OF_EXTENT * Math.min(stars.extent[0], stars.extent[1]);
+  // Where most parallaxes are not even positive they say nothing about velocities.
+  const physical = stars.useParallax && stars.centre[2] > 0 ? (MOST_DISPERSION * parallax) / KMS_PER_AU_PER_YEAR : 0;
+  const relative = physical === 0 ? 0.1 * spread : 0.03 * spread;
+  const mostMotion = given ?? Math.min(cap, Math.max(relative, physical));
+  return {
+    leastMotion: 1e-3 * mostMotion,
+    mostMotion,
+    leastParallax: 1e-5 * stars.spread[2],
+    mostParallax: Math.max(0.1 * stars.spread[2], MOST_DEPTH * Math.abs(parallax)),
+  };
+}
+
+/** Parallaxes through the range of the stars that move about so, evenly by number. */
+function parallaxesNear(stars: Stars, motion: readonly number[], within: number): number[] {
+  if (!stars.useParallax) return [0];
+  const near: number[] = [];
+  for (let i = 0; i < stars.count; i++) {
+    const off = Math.hypot(stars.values[3 * i] - motion[0], stars.values[3 * i + 1] - motion[1]);
+    if (off < within) near.push(stars.values[3 * i + 2]);
+  }
+  const sorted = Float64Array.from(near.length >= 20 ? near : [stars.centre[2]]).sort();
+  return Array.from({ length: 15 }, (_, k) => sortedQuantile(sorted, (k + 0.5) / 15));
 }
 
 function spaceStarts(stars: Stars, settings: StartSettings, stream: RandomStream): ClusterStart[] {

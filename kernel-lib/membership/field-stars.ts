@@ -33,9 +33,11 @@ export interface FieldSums {
  * pass for a cluster. km/s; the least dispersion of young disc stars is about 10 (common practice, no source).
  */
 const LEAST_FIELD_DISPERSION = 7;
-/** The same as shares of the spread of all stars: a floor for distant stars, and a cap where the field was cut in motion. */
+/** A floor for distant stars, as a share of the spread of all stars; the second holds where parallax says nothing. */
 const LEAST_MOTION_SPREAD = 0.1;
-const MOST_MOTION_FLOOR = 0.5;
+const LEAST_SPREAD_WITHOUT_PARALLAX = 0.3;
+/** A cap on that floor, as a share of the extent of all stars: a field that was cut in motion is as narrow as the cut. */
+const MOST_MOTION_FLOOR = 0.6;
 const LEAST_PARALLAX_SPREAD = 0.03;
 /** Stars that a class's share is drawn toward the overall share with. More than about one biases the count where the
  * cluster's magnitudes are not the field's. */
@@ -216,9 +218,11 @@ function unpack(packed: Float64Array, at: number): number[] {
 
 /** Keeps a component wide enough in motion not to pass for a cluster, and positive definite in parallax. */
 function widen(packed: Float64Array, stars: Stars, parallax: number): void {
-  const motion = Math.min(stars.spread[0], stars.spread[1]);
   const physical = (LEAST_FIELD_DISPERSION * Math.max(0, parallax)) / KMS_PER_AU_PER_YEAR;
-  const floor = Math.min(MOST_MOTION_FLOOR * motion, Math.max(LEAST_MOTION_SPREAD * motion, physical)) ** 2;
+  const share = stars.useParallax && stars.centre[2] > 0 ? LEAST_MOTION_SPREAD : LEAST_SPREAD_WITHOUT_PARALLAX;
+  const relative = share * Math.min(stars.spread[0], stars.spread[1]);
+  const cap = MOST_MOTION_FLOOR * Math.min(stars.extent[0], stars.extent[1]);
+  const floor = Math.min(cap, Math.max(relative, physical)) ** 2;
   const half = (packed[0] + packed[3]) / 2;
   const least = half - Math.hypot((packed[0] - packed[3]) / 2, packed[1]);
   if (least < floor) {

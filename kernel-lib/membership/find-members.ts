@@ -142,7 +142,9 @@ export function findMembers(catalogue: Catalogue, options: FindMembersOptions = 
 
   const errors = fitErrors(stars, fit);
   const doubt = whyDoubtful(fit, evidence, errors.countError);
-  if (doubt !== null) return notFound(catalogue, astrometry, settings, fit, evidence, [doubt], starts.length);
+  if (doubt !== null) {
+    return notFound(catalogue, astrometry, settings, fit, evidence, [doubt, ...hints(settings)], starts.length);
+  }
   return found(catalogue, astrometry, settings, fit, { evidence, iterations, starts: starts.length, errors });
 }
 
@@ -221,8 +223,8 @@ function chooseRows(count: number, wanted: number, stream: ReturnType<typeof ran
 }
 
 /** Evidence beyond which a longer climb of the field alone cannot matter: at least this, and this for each star. */
-const AMPLE_EVIDENCE = 200;
-const AMPLE_EVIDENCE_PER_STAR = 0.02;
+const AMPLE_EVIDENCE = 500;
+const AMPLE_EVIDENCE_PER_STAR = 0.1;
 
 /**
  * By how much the cluster lowers the information criterion against the best explanation without one: the field alone, also
@@ -255,6 +257,19 @@ function whyDoubtful(fit: Mixture, evidence: number, countError: number): string
     return `The best cluster holds ${expected.toFixed(1)} ± ${countError.toFixed(1)} members: less than three standard errors.`;
   }
   return null;
+}
+
+/** What may have kept a cluster from being found. */
+function hints(settings: Settings): string[] {
+  const out: string[] = [];
+  if (settings.guess !== undefined) out.push('Searched only near the guess: without it the whole field is searched.');
+  if ((settings.fieldComponents ?? 9) < 3) {
+    out.push('So few field components seldom suffice: without fieldComponents their number is chosen by the data.');
+  }
+  out.push(
+    'A field needs stars around the cluster to compare with: do not cut closely about its motion or parallax first.',
+  );
+  return out;
 }
 
 function notFound(

@@ -157,10 +157,10 @@ function steps(p: Float64Array, limits: DispersionLimits, useParallax: boolean):
   out[5] = free(p[5], limits.leastMotion, limits.mostMotion);
   out[4] = out[3] > 0 && out[5] > 0 && p[4] !== 0 ? 0.02 * Math.sqrt(p[3] * p[5] - p[4] ** 2) : 0;
   if (!(out[4] > 0)) out[4] = 0;
-  out[0] = 0.01 * Math.max(Math.sqrt(p[3]), 0.02 * limits.mostMotion);
-  out[1] = 0.01 * Math.max(Math.sqrt(p[5]), 0.02 * limits.mostMotion);
+  out[0] = 0.01 * Math.sqrt(p[3]);
+  out[1] = 0.01 * Math.sqrt(p[5]);
   if (useParallax) {
-    out[2] = 0.01 * Math.max(Math.sqrt(p[6]), 0.02 * limits.mostParallax);
+    out[2] = 0.01 * Math.sqrt(p[6]);
     out[6] = free(p[6], limits.leastParallax, limits.mostParallax);
   }
   return out;

@@ -16,6 +16,8 @@ export interface Stars {
   readonly centre: Float64Array;
   /** Robust spread of the three values, the central 90 % read as a Gaussian, shape (3). */
   readonly spread: Float64Array;
+  /** Spread of a uniform distribution over the central 98 %: not narrowed by a cluster that dominates. Shape (3). */
+  readonly extent: Float64Array;
   /** Unit vectors east, north and away from us at each star, equatorial axes, where positions are used; shape (count, 9). */
   readonly basis: Float64Array | null;
   /** Radial velocities where any are used. */
