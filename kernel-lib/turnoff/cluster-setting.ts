@@ -83,15 +83,28 @@ export function guessOf(
   if (typeof centre !== 'number') {
     throw new TypeError(`${caller}: ${name} must be a number or a measured value, got ${describe(value)}.`);
   }
+  if (Number.isNaN(centre)) {
+    throw new RangeError(
+      `${caller}: ${name} is not determined; pass a value of your own, with its error if there is one.`,
+    );
+  }
   checkRange(caller, name, centre, low, high, unit);
   const error = typeof value === 'number' ? 0 : 0.5 * (value.upper - value.lower);
   return { value: centre, error: Number.isFinite(error) ? error : 0 };
 }
 
-/** Reads the stars and settles the options. */
-export function settleCluster(caller: string, members: Catalogue, options: ClusterOptions): ClusterSetting {
+/**
+ * Reads the stars and settles the options.
+ * @param modulusError error of the distance modulus where none is given; null (default) makes it an error to give none
+ */
+export function settleCluster(
+  caller: string,
+  members: Catalogue,
+  options: Partial<ClusterOptions>,
+  modulusError: number | null = null,
+): ClusterSetting {
   const { metallicity = 0, rV = 3.1, law = 'CCM89', model = analyticModel, colourFloor = 0.01 } = options;
-  if (options.distanceModulus === undefined) {
+  if (options.distanceModulus === undefined && modulusError === null) {
     throw new TypeError(
       `${caller}: distanceModulus is missing; pass clusterDistance(members).modulus, a number, or 'parallax'.`,
     );
@@ -104,7 +117,9 @@ export function settleCluster(caller: string, members: Catalogue, options: Clust
   requireStars(caller, stars, LEAST_STARS);
   const modulus = absolute
     ? { value: 0, error: 0 }
-    : guessOf(caller, 'distanceModulus', options.distanceModulus as number | Measured, -5, 25, 'mag');
+    : options.distanceModulus === undefined
+      ? { value: 10, error: modulusError as number }
+      : guessOf(caller, 'distanceModulus', options.distanceModulus as number | Measured, -5, 25, 'mag');
   const order = byMagnitude(stars);
   const ridge = findRidge(stars.colour, stars.magnitude, stars.colourError, order, windowFor(order.length));
   return {
@@ -208,7 +223,22 @@ export function regionOf(setting: ClusterSetting, bright: number, faint: number)
     faint,
     blueEdge,
     redEdge,
-    giantColour: ridge.colour[bluest] + 0.3,
-    giantMagnitude: ridge.magnitude[bluest] + 1.5,
+    ...giantCorner(setting),
   };
+}
+
+/** Stars up to this much fainter than the bluest point of the ridge, and red enough, count as giants. */
+const GIANTS_BELOW = 1.5;
+
+/** The corner of the diagram where giants are; it leaves the main sequence out also where that has no turnoff in the data. */
+export function giantCorner({ ridge, bluest }: Pick<ClusterSetting, 'ridge' | 'bluest'>): {
+  giantColour: number;
+  giantMagnitude: number;
+} {
+  const giantMagnitude = ridge.magnitude[bluest] + GIANTS_BELOW;
+  let sequence = ridge.colour[bluest];
+  for (let w = bluest; w < ridge.colour.length && ridge.magnitude[w] <= giantMagnitude; w++) {
+    if (ridge.stars[w] >= 3) sequence = Math.max(sequence, ridge.colour[w]);
+  }
+  return { giantColour: Math.max(ridge.colour[bluest] + 0.3, sequence + 0.15), giantMagnitude };
 }

@@ -1,157 +1,266 @@
 import type { Catalogue } from '../catalogue/catalogue';
-import { findRoot } from '../numeric/find-root';
-import { gaussianSumQuantile } from '../numeric/gaussian-sum';
-import { type Measured, measured, sortedQuantile } from '../quantity/measured';
-import { checkOptions } from '../quantity/options';
+import { type GaussianPart, gaussianSumQuantile } from '../numeric/gaussian-sum';
+import { type Measured, measured } from '../quantity/measured';
+import { checkOptions, checkRange } from '../quantity/options';
+import { escapeHtml, htmlTable, presentable, textTable } from '../quantity/present';
 import {
   CLUSTER_OPTIONS,
   type ClusterOptions,
   type ClusterSetting,
+  type Guess,
+  guessOf,
   regionOf,
   sequenceMaker,
   settleCluster,
 } from './cluster-setting';
-import { findPeak, type Peak } from './peak';
+import { metallicityNodes } from './metallicity-nodes';
+import { fitPlace, likelihoodAt, makeComparison, type PlaceFit } from './place-fit';
+import { placeStart, thinned } from './place-start';
 import type { Sequence } from './sequence';
-import { makeWorkspace, type ReadyStars, type Region, readyStars, sequenceLogLikelihood } from './sequence-likelihood';
+import { meanShares, type Region, readyStars } from './sequence-likelihood';
+
+/** What `mainSequenceFit` takes. */
+export interface MainSequenceFitOptions extends Omit<ClusterOptions, 'distanceModulus'> {
+  /** True distance modulus, mag, with or without its error; 'parallax' for every star at its own distance. Default: free. */
+  distanceModulus?: ClusterOptions['distanceModulus'];
+  /** E(B-V), mag, with or without its error. Default: free. */
+  ebv?: number | Measured;
+  /** Standard error of the metallicity, dex: the fit is averaged over it. Default: 0. */
+  metallicityError?: number;
+  /** Range of E(B-V) searched, mag. Default: -0.1 to 3. */
+  range?: readonly [number, number];
+  /** Range of distance moduli searched where it is free, mag. Default: -2 to 19. */
+  modulusRange?: readonly [number, number];
+  /** Systematic error, mag of E(B-V), added in quadrature: zero points of photometry and colour scale. Default: 0.01. */
+  systematicError?: number;
+  /** Called with the work that is done and all of it. */
+  onProgress?: (done: number, total: number) => void;
+}
 
 /** What `estimateReddening` takes. */
-export interface EstimateReddeningOptions extends ClusterOptions {
-  /** Range searched, mag. Default: -0.1 to 3. */
-  range?: readonly [number, number];
-  /** Systematic error added to the result in quadrature, mag of E(B-V): zero points of photometry and colour scale. Default: 0.01. */
-  systematicError?: number;
-  /** Called with the share of the work that is done. */
-  onProgress?: (done: number, total: number) => void;
+export interface EstimateReddeningOptions
+  extends Omit<MainSequenceFitOptions, 'distanceModulus' | 'ebv' | 'modulusRange'> {
+  /** True distance modulus, mag, with or without its error; 'parallax' for every star at its own distance. */
+  distanceModulus: ClusterOptions['distanceModulus'];
+}
+
+/** Reddening and distance from the main sequence. */
+export interface MainSequenceFit {
+  /** E(B-V), mag; not determined where the search ends at the edge of its range. */
+  readonly ebv: Measured;
+  /** True distance modulus, mag. */
+  readonly distanceModulus: Measured;
+  /** Correlation of their errors. */
+  readonly correlation: number;
+  readonly starCount: number;
+  /** Share of unresolved binaries among the stars compared, and of stars that fit no sequence. */
+  readonly binaryShare: number;
+  readonly foreignShare: number;
+  readonly notes: readonly string[];
 }
 
 /** log10 of ages tried: the unevolved sequence hardly depends on them, and what it does is averaged over. */
 const LOG_AGES = [7.6, 8.0, 8.3, 8.6, 8.8, 9.0, 9.2, 9.4, 9.6, 9.8, 10.0];
+/** Where the turnoff itself has to be used, ages stand close. */
+const CLOSE_LOG_AGES = Array.from({ length: 63 }, (_, i) => 7 + 0.05 * i);
 /** Stars this much fainter than the bluest point of the ridge count as unevolved. */
 export const UNEVOLVED_BELOW = 1.75;
 const LEAST_UNEVOLVED = 20;
-/** Standard deviations of the distance modulus at which the fit is repeated. */
-const NODES = [-2, -1, 0, 1, 2];
+/** More stars than these add nothing to an error that the colour scale sets. */
+const MOST_STARS = 500;
+const FOREIGN_WARNING = 0.2;
 
 /**
- * Reddening from the unevolved main sequence at a known distance: the sequence of the model, with its unresolved binaries, is moved along
- * the reddening line to where the stars are most likely. Stars more than 1.75 mag below the bluest point of the ridge are
- * used; age is averaged over, and so is the error of the distance.
+ * Reddening, distance or both from the main sequence: the sequence of the model, with its unresolved binaries, is moved to where
+ * the stars are most likely, every star with its own errors. Stars more than 1.75 mag below the bluest point of the ridge are used, where
+ * there are at least 20, else all; age is averaged over, and so are the errors of whatever is given.
  * @param members catalogue of member stars
- * @returns E(B-V), mag, with its 68 % interval
+ * @param options what is known: distanceModulus, ebv; neither frees both, which only the bends of the sequence tell apart
+ * @returns E(B-V) and distance modulus with 68 % intervals and their correlation
+ * @throws Error when bands are missing or fewer than 12 stars have them; TypeError or RangeError on options
+ * @example mainSequenceFit(members, { ebv: 0.05 }).distanceModulus
+ * Method: mixture likelihood of single stars, binaries of uniform mass ratio and foreign stars; Laplace's method over reddening and
+ * distance. Not included: an error of R_V or of the models.
+ */
+export function mainSequenceFit(members: Catalogue, options: MainSequenceFitOptions = {}): MainSequenceFit {
+  const caller = 'mainSequenceFit';
+  const known = ['ebv', 'metallicityError', 'range', 'modulusRange', 'systematicError', 'onProgress'];
+  checkOptions(caller, options, [...CLUSTER_OPTIONS, ...known]);
+  return show(fitSequence(caller, members, options));
+}
+
+/**
+ * Reddening from the unevolved main sequence at a known distance: `mainSequenceFit` with only the reddening free.
+ * @param members catalogue of member stars
+ * @returns E(B-V), mag, with its 68 % interval; not determined where the search ends at the edge of its range
  * @throws Error when bands are missing or fewer than 12 stars have them; TypeError or RangeError on options
  * @example estimateReddening(members, { distanceModulus: clusterDistance(members).modulus })
- * Not included: an error of the assumed metallicity (in B-V, 0.1 dex is worth about 0.02-0.03 mag) or of R_V. The accuracy of
- * the colour scale enters as `systematicError`.
+ * Not included: an error of R_V, and of the assumed metallicity unless given as metallicityError (in B-V, 0.1 dex is worth about
+ * 0.02-0.03 mag). The accuracy of the colour scale enters as `systematicError`.
  */
 export function estimateReddening(members: Catalogue, options: EstimateReddeningOptions): Measured {
   const caller = 'estimateReddening';
-  checkOptions(caller, options, [...CLUSTER_OPTIONS, 'range', 'systematicError', 'onProgress']);
-  const { range = [-0.1, 3], systematicError = 0.01, onProgress } = options;
-  const setting = settleCluster(caller, members, options);
-  const { stars, order, ridge, bluest, modulus } = setting;
-  const faintest = stars.magnitude[order[order.length - 1]];
-  let bright = ridge.magnitude[bluest] + UNEVOLVED_BELOW;
-  const below = order.filter((k) => stars.magnitude[k] >= bright).length;
-  if (below < LEAST_UNEVOLVED) bright = stars.magnitude[order[0]] - 0.01;
-  const region = regionOf(setting, bright, faintest + 0.01);
-  const ready = readyStars(stars, region, setting.colourFloor);
-  const work = makeWorkspace(ready.count);
-  const sequenceAt = sequenceMaker(setting);
-  const [low, high] = range;
-  const peaks: { peak: Peak; weight: number }[] = [];
-  const ages = LOG_AGES.filter((a) => a >= setting.model.logAgeRange[0] && a <= setting.model.logAgeRange[1]);
-  ages.forEach((logAge, done) => {
-    const { sequence } = sequenceAt(logAge);
-    if (sequence !== null) {
-      const start = ridgeReddening(setting, sequence, bright, low, high);
-      const nodes = modulus.error > 0.004 ? NODES : [0];
-      for (const node of nodes) {
-        const dm = modulus.value + node * modulus.error;
-        const peak = reddeningPeak(setting, ready, sequence, region, work, start, dm, low, high);
-        peaks.push({ peak, weight: peak.top + Math.log(peak.sigma || 1e-9) - 0.5 * node * node });
-      }
-    }
-    onProgress?.(done + 1, ages.length);
-  });
-  return combine(peaks, systematicError);
+  checkOptions(caller, options, [...CLUSTER_OPTIONS, 'metallicityError', 'range', 'systematicError', 'onProgress']);
+  if (options?.distanceModulus === undefined) {
+    throw new TypeError(
+      `${caller}: distanceModulus is missing; pass clusterDistance(members).modulus, a number, or 'parallax'.`,
+    );
+  }
+  return fitSequence(caller, members, options).ebv;
 }
 
-function reddeningPeak(
-  setting: ClusterSetting,
-  ready: ReadyStars,
-  sequence: Sequence,
-  region: Region,
-  work: ReturnType<typeof makeWorkspace>,
-  start: number,
-  dm: number,
-  low: number,
-  high: number,
-): Peak {
-  const { perExcess, perExtinction } = setting;
-  return findPeak(
-    (e) => sequenceLogLikelihood(ready, sequence, e * perExcess, dm + e * perExtinction, region, work),
-    start,
-    0.02,
-    low,
-    high,
+function fitSequence(caller: string, members: Catalogue, options: MainSequenceFitOptions): MainSequenceFit {
+  const { range = [-0.1, 3], modulusRange = [-2, 19], metallicityError = 0, systematicError = 0.01 } = options;
+  checkRange(caller, 'metallicityError', metallicityError, 0, 1, 'dex');
+  checkRange(caller, 'systematicError', systematicError, 0, 1, 'mag');
+  checkRange(caller, 'range[0]', range[0], -1, 10, 'mag');
+  checkRange(caller, 'range[1]', range[1], range[0], 10, 'mag');
+  const setting = settleCluster(caller, members, options, Number.POSITIVE_INFINITY);
+  const given = options.ebv === undefined ? null : guessOf(caller, 'ebv', options.ebv, -0.5, 10, 'mag');
+  const ebv: Guess =
+    given === null
+      ? { value: 0.1, error: Number.POSITIVE_INFINITY }
+      : { value: given.value, error: Math.hypot(given.error, systematicError) };
+  const prior = { ebv, modulus: setting.modulus };
+  const { region, evolved } = unevolvedRegion(setting);
+  const notes = [...setting.notes];
+  if (evolved) notes.push(`Fewer than ${LEAST_UNEVOLVED} stars are unevolved, so the turnoff itself was used as well.`);
+  const comparison = makeComparison(
+    setting,
+    thinned(readyStars(setting.stars, region, setting.colourFloor), MOST_STARS),
+    region,
   );
-}
-
-/** First idea of the reddening: the median over ridge points of what brings each onto the single-star sequence. */
-function ridgeReddening(
-  setting: ClusterSetting,
-  sequence: Sequence,
-  bright: number,
-  low: number,
-  high: number,
-): number {
-  const { ridge, modulus, perExcess, perExtinction } = setting;
-  const values: number[] = [];
-  for (let w = 0; w < ridge.magnitude.length; w++) {
-    if (ridge.magnitude[w] < bright || ridge.stars[w] < 3) continue;
-    const miss = (e: number) => {
-      const c = colourAt(sequence, ridge.magnitude[w] - modulus.value - e * perExtinction);
-      return ridge.colour[w] - e * perExcess - c;
-    };
-    // The first sign change from small reddenings on; the sequence and the reddening line meet once on its unevolved part.
-    let before = miss(low);
-    for (let e = low + 0.05; e <= high + 1e-9; e += 0.05) {
-      const next = miss(e);
-      if (Number.isFinite(before) && Number.isFinite(next) && before * next <= 0) {
-        values.push(findRoot(miss, e - 0.05, e));
-        break;
+  const [youngest, oldest] = setting.model.logAgeRange;
+  const ages = (evolved ? CLOSE_LOG_AGES : LOG_AGES).filter((a) => a >= youngest && a <= oldest);
+  const nodes = metallicityNodes(setting.model, setting.metallicity, metallicityError);
+  const parts: { fit: PlaceFit; log: number; sequence: Sequence }[] = [];
+  const total = nodes.length * ages.length;
+  let done = 0;
+  for (const node of nodes) {
+    const sequenceAt = sequenceMaker(setting, node.metallicity);
+    const sequences = ages.map((a) => sequenceAt(a).sequence).filter((s): s is Sequence => s !== null);
+    const scanned = sequences.filter((_, i) => i % 4 === 1);
+    let start = placeStart(setting, region, scanned, prior, range, modulusRange);
+    for (const sequence of sequences) {
+      const fit = fitPlace(comparison, sequence, prior, start);
+      if (Number.isFinite(fit.logIntegral) && Number.isFinite(fit.ebvVariance + fit.modulusVariance)) {
+        parts.push({ fit, log: fit.logIntegral + Math.log(node.weight), sequence });
+        start = parts.reduce((a, b) => (b.log > a.log ? b : a)).fit;
       }
-      before = next;
+      options.onProgress?.(++done, total);
     }
   }
-  if (values.length === 0) return Math.min(Math.max(0.05, low), high);
-  return sortedQuantile(Float64Array.from(values).sort(), 0.5);
-}
-
-/** Colour of the single-star sequence at an absolute magnitude; NaN off it. Faint segments come first. */
-export function colourAt(sequence: Sequence, magnitude: number): number {
-  for (let k = 0; k < sequence.singles; k++) {
-    const y0 = sequence.y[k];
-    const y1 = y0 + sequence.dy[k];
-    if ((magnitude - y0) * (magnitude - y1) <= 0 && y0 !== y1) {
-      return sequence.x[k] + ((magnitude - y0) / (y1 - y0)) * sequence.dx[k];
-    }
+  const top = Math.max(...parts.map((p) => p.log));
+  const good = parts.filter((p) => p.log > top - 20);
+  const best = good.find((p) => p.log === top);
+  const shares = { binary: Number.NaN, foreign: Number.NaN };
+  if (best !== undefined) {
+    likelihoodAt(comparison, best.sequence, best.fit.ebv, best.fit.modulus);
+    Object.assign(shares, meanShares(comparison.work));
   }
-  return Number.NaN;
+  if (shares.foreign > FOREIGN_WARNING) {
+    notes.push(
+      `About ${Math.round(100 * shares.foreign)} % of the stars fit no sequence: check membership and what was given.`,
+    );
+  }
+  const weighed = good.map((p) => ({ ...p.fit, share: Math.exp(p.log - top) }));
+  const edge = best === undefined || best.fit.ebv < range[0] || best.fit.ebv > range[1];
+  if (edge) notes.push('The best reddening lies outside the range searched, so it is not determined.');
+  const drift = given === null && setting.modulus.error > 0 ? slopeOf(weighed) : 0;
+  return {
+    ebv: edge
+      ? unknown()
+      : quantiles(
+          weighed.map((p) => ({
+            at: p.ebv,
+            sigma: Math.hypot(Math.sqrt(p.ebvVariance), given === null ? systematicError : 0),
+            share: p.share,
+          })),
+        ),
+    distanceModulus: edge
+      ? unknown()
+      : quantiles(
+          weighed.map((p) => ({
+            at: p.modulus,
+            sigma: Math.hypot(Math.sqrt(p.modulusVariance), drift * systematicError),
+            share: p.share,
+          })),
+        ),
+    correlation: correlationOf(weighed),
+    starCount: comparison.stars.count,
+    binaryShare: shares.binary,
+    foreignShare: shares.foreign,
+    notes: Object.freeze(notes),
+  };
 }
 
-/** Median and 68 % interval of a weighted sum of Gaussians, widened by a systematic error. */
-function combine(peaks: readonly { peak: Peak; weight: number }[], systematic: number): Measured {
-  const good = peaks.filter((p) => Number.isFinite(p.weight) && Number.isFinite(p.peak.at));
-  if (good.length === 0) return measured(Number.NaN, Number.NaN, Number.NaN, 'mag');
-  const top = Math.max(...good.map((p) => p.weight));
-  const parts = good.map((p) => ({
-    at: p.peak.at,
-    sigma: Math.max(Math.hypot(p.peak.sigma, systematic), 1e-9),
-    share: Math.exp(p.weight - top),
-  }));
-  const quantile = (q: number) => gaussianSumQuantile(parts, q);
-  const value = quantile(0.5);
-  return measured(value, Math.min(value, quantile(0.158655)), Math.max(value, quantile(0.841345)), 'mag');
+/** The unevolved part of the diagram; all of it where that holds too few stars. */
+function unevolvedRegion(setting: ClusterSetting): { region: Region; evolved: boolean } {
+  const { stars, order, ridge, bluest } = setting;
+  const faintest = stars.magnitude[order[order.length - 1]] + 0.01;
+  const bright = ridge.magnitude[bluest] + UNEVOLVED_BELOW;
+  const below = order.filter((k) => stars.magnitude[k] >= bright).length;
+  const evolved = below < LEAST_UNEVOLVED;
+  return { region: regionOf(setting, evolved ? stars.magnitude[order[0]] - 0.01 : bright, faintest), evolved };
+}
+
+type Weighed = PlaceFit & { share: number };
+
+function moments(parts: readonly Weighed[]) {
+  let total = 0;
+  let e = 0;
+  let m = 0;
+  for (const p of parts) {
+    total += p.share;
+    e += p.share * p.ebv;
+    m += p.share * p.modulus;
+  }
+  e /= total;
+  m /= total;
+  let ee = 0;
+  let mm = 0;
+  let em = 0;
+  for (const p of parts) {
+    ee += (p.share / total) * (p.ebvVariance + (p.ebv - e) ** 2);
+    mm += (p.share / total) * (p.modulusVariance + (p.modulus - m) ** 2);
+    em += (p.share / total) * (p.covariance + (p.ebv - e) * (p.modulus - m));
+  }
+  return { ee, mm, em };
+}
+
+function correlationOf(parts: readonly Weighed[]): number {
+  const { ee, mm, em } = moments(parts);
+  return ee > 0 && mm > 0 ? em / Math.sqrt(ee * mm) : 0;
+}
+
+/** How much the modulus moves with the reddening along the fit. */
+function slopeOf(parts: readonly Weighed[]): number {
+  const { ee, em } = moments(parts);
+  return ee > 0 ? Math.abs(em / ee) : 0;
+}
+
+const unknown = () => measured(Number.NaN, Number.NaN, Number.NaN, 'mag');
+
+function quantiles(parts: readonly GaussianPart[]): Measured {
+  const spread = parts.map((p) => ({ ...p, sigma: Math.max(p.sigma, 1e-9) }));
+  const at = (q: number) => gaussianSumQuantile(spread, q);
+  const value = at(0.5);
+  return measured(value, Math.min(value, at(0.158655)), Math.max(value, at(0.841345)), 'mag');
+}
+
+function show(fit: MainSequenceFit): MainSequenceFit {
+  const rows = [
+    ['E(B-V)', String(fit.ebv)],
+    ['distance modulus', String(fit.distanceModulus)],
+    ['correlation', fit.correlation.toFixed(2)],
+    ['unresolved binaries', `${Math.round(100 * fit.binaryShare)} %`],
+    ['stars that fit no sequence', `${Math.round(100 * fit.foreignShare)} %`],
+  ];
+  const title = `Main-sequence fit to ${fit.starCount} stars`;
+  const head = ['quantity', 'value'];
+  return presentable(fit, {
+    text: () => [title, textTable(head, rows), ...fit.notes.map((t) => `- ${t}`)].join('\n'),
+    html: () =>
+      `<div>${htmlTable(head, rows, { caption: title })}<ul>${fit.notes.map((t) => `<li>${escapeHtml(t)}</li>`).join('')}</ul></div>`,
+  });
 }

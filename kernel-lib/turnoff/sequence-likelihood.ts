@@ -85,14 +85,16 @@ export function readyStars(
 
 /** Shares of binaries and of stars foreign to the sequence that are summed over, all alike beforehand. */
 export const BINARY_SHARES: readonly number[] = [0.05, 0.15, 0.25, 0.35, 0.45, 0.55, 0.65, 0.75];
-export const FOREIGN_SHARES: readonly number[] = [0.003, 0.01, 0.03, 0.07, 0.15, 0.3];
+export const FOREIGN_SHARES: readonly number[] = [0.003, 0.01, 0.03, 0.07, 0.15, 0.3, 0.5];
 
 /** Room for `sequenceLogLikelihood` to work in, so that it allocates nothing. */
 export interface Workspace {
   readonly singles: Float64Array;
   readonly binaries: Float64Array;
-  /** Log-likelihood of every pair of shares, shape (foreign, binary). */
+  /** Log-likelihood of every pair of shares, shape (foreign, binary), as the last call left it. */
   readonly cells: Float64Array;
+  /** Product over the latest stars, which saves most of the logarithms; shape as cells. */
+  readonly products: Float64Array;
 }
 
 export function makeWorkspace(count: number): Workspace {
@@ -100,6 +102,7 @@ export function makeWorkspace(count: number): Workspace {
     singles: new Float64Array(count),
     binaries: new Float64Array(count),
     cells: new Float64Array(BINARY_SHARES.length * FOREIGN_SHARES.length),
+    products: new Float64Array(BINARY_SHARES.length * FOREIGN_SHARES.length),
   };
 }
 
@@ -118,35 +121,67 @@ export function sequenceLogLikelihood(
   region: Region,
   work: Workspace,
 ): number {
-  const { singles, binaries, cells } = work;
+  const { singles, binaries } = work;
   singles.fill(0);
   binaries.fill(0);
   const inSingles = addSegments(stars, sequence, 0, sequence.singles, shiftX, shiftY, region, singles);
   const inBinaries = addSegments(stars, sequence, sequence.singles, sequence.count, shiftX, shiftY, region, binaries);
   if (!(inSingles > 1e-12)) return Number.NEGATIVE_INFINITY;
   const area = (region.faint - region.bright) * (region.redEdge - region.blueEdge);
-  const perSingle = 1 / inSingles;
-  const perBinary = inBinaries > 1e-12 ? 1 / inBinaries : 0;
-  const foreign = 1 / area;
+  addShares(stars, 1 / inSingles, inBinaries > 1e-12 ? 1 / inBinaries : 0, 1 / area, work);
+  return logMean(work.cells);
+}
+
+/** Stars whose densities are multiplied before a logarithm is taken: few enough to stay far from the ends of a double. */
+const BATCH = 16;
+
+/** Log-likelihood of all stars for every pair of shares, into `work.cells`. */
+function addShares(stars: ReadyStars, perSingle: number, perBinary: number, foreign: number, work: Workspace): void {
+  const { singles, binaries, cells, products } = work;
   const nb = BINARY_SHARES.length;
+  const nf = FOREIGN_SHARES.length;
   cells.fill(0);
+  products.fill(1);
   for (let i = 0; i < stars.count; i++) {
     const s = singles[i] * perSingle;
-    const p = binaries[i] * perBinary;
-    for (let f = 0; f < FOREIGN_SHARES.length; f++) {
+    const p = binaries[i] * perBinary - s;
+    for (let f = 0; f < nf; f++) {
       const member = stars.probability[i] * (1 - FOREIGN_SHARES[f]);
       const rest = (1 - member) * foreign;
-      for (let j = 0; j < nb; j++) {
-        const share = BINARY_SHARES[j];
-        cells[f * nb + j] += Math.log(member * ((1 - share) * s + share * p) + rest);
+      for (let j = 0; j < nb; j++) products[f * nb + j] *= member * (s + BINARY_SHARES[j] * p) + rest;
+    }
+    if (i % BATCH === BATCH - 1 || i === stars.count - 1) {
+      for (let k = 0; k < cells.length; k++) {
+        cells[k] += Math.log(products[k]);
+        products[k] = 1;
       }
     }
   }
+}
+
+function logMean(cells: Float64Array): number {
   let top = Number.NEGATIVE_INFINITY;
   for (let k = 0; k < cells.length; k++) top = Math.max(top, cells[k]);
   let sum = 0;
   for (let k = 0; k < cells.length; k++) sum += Math.exp(cells[k] - top);
   return top + Math.log(sum / cells.length);
+}
+
+/** Mean shares of binaries and of foreign stars, by the log-likelihoods that the last call left. */
+export function meanShares(work: Workspace): { binary: number; foreign: number } {
+  const { cells } = work;
+  const nb = BINARY_SHARES.length;
+  const top = Math.max(...cells);
+  let sum = 0;
+  let binary = 0;
+  let foreign = 0;
+  for (let k = 0; k < cells.length; k++) {
+    const weight = Math.exp(cells[k] - top);
+    sum += weight;
+    binary += weight * BINARY_SHARES[k % nb];
+    foreign += weight * FOREIGN_SHARES[Math.floor(k / nb)];
+  }
+  return { binary: binary / sum, foreign: foreign / sum };
 }
 
 /** Squared distance in standard deviations beyond which a star gets nothing from a segment. */

@@ -36,7 +36,14 @@ export function sequenceOf(isochrone: Isochrone, blue: Band, red: Band, band: Ba
   let end = 0;
   while (end < count && (phase[end] <= LAST_PHASE || phase[end] === 255)) end++;
   if (end < 3) return null;
-  const starts = new Set(breaks);
+  const starts = new Uint8Array(count);
+  for (const b of breaks) starts[b] = 1;
+  // Number of stars between points, by the initial mass function.
+  const gain = new Float64Array(end);
+  for (let k = 0; k + 1 < end; k++) {
+    const span = initialMass[k + 1] - initialMass[k];
+    if (span > 0) gain[k] = span * initialMassFunction('kroupa2001', 0.5 * (initialMass[k] + initialMass[k + 1]));
+  }
   const most = (end - 1) * (RATIOS + 1);
   const out = {
     x: new Float64Array(most),
@@ -48,21 +55,29 @@ export function sequenceOf(isochrone: Isochrone, blue: Band, red: Band, band: Ba
   const pairX = new Float64Array(end);
   const pairY = new Float64Array(end);
   let at = 0;
-  const add = (): number => {
+  const joins = (k: number) => !starts[k + 1] && Number.isFinite(pairX[k + 1] + pairY[k + 1]);
+  const add = (stray: number): number => {
     const first = at;
     let total = 0;
-    for (let k = 0; k + 1 < end; k++) {
-      const gain = initialMass[k + 1] - initialMass[k];
-      if (!(gain > 0) || starts.has(k + 1) || !Number.isFinite(pairX[k] + pairX[k + 1] + pairY[k] + pairY[k + 1]))
+    for (let k = 0; k + 1 < end; ) {
+      if (!Number.isFinite(pairX[k] + pairY[k]) || !joins(k)) {
+        k++;
         continue;
-      const weight = gain * initialMassFunction('kroupa2001', 0.5 * (initialMass[k] + initialMass[k + 1]));
-      out.x[at] = pairX[k];
-      out.y[at] = pairY[k];
-      out.dx[at] = pairX[k + 1] - pairX[k];
-      out.dy[at] = pairY[k + 1] - pairY[k];
-      out.weight[at] = weight;
-      total += weight;
-      at++;
+      }
+      let to = k + 1;
+      while (to + 1 < end && joins(to) && isStraight(pairX, pairY, gain, k, to + 1, stray)) to++;
+      let weight = 0;
+      for (let i = k; i < to; i++) weight += gain[i];
+      if (weight > 0) {
+        out.x[at] = pairX[k];
+        out.y[at] = pairY[k];
+        out.dx[at] = pairX[to] - pairX[k];
+        out.dy[at] = pairY[to] - pairY[k];
+        out.weight[at] = weight;
+        total += weight;
+        at++;
+      }
+      k = to;
     }
     for (let k = first; k < at; k++) out.weight[k] /= total;
     return at;
@@ -71,7 +86,7 @@ export function sequenceOf(isochrone: Isochrone, blue: Band, red: Band, band: Ba
     pairX[k] = columns[0][k] - columns[1][k];
     pairY[k] = columns[2][k];
   }
-  const singles = add();
+  const singles = add(STRAY_SINGLE);
   for (let j = 0; j < RATIOS; j++) {
     const ratio = LEAST_RATIO + ((1 - LEAST_RATIO) * (j + 0.5)) / RATIOS;
     let low = 0;
@@ -85,8 +100,34 @@ export function sequenceOf(isochrone: Isochrone, blue: Band, red: Band, band: Ba
       pairX[k] = combined(columns[0]) - combined(columns[1]);
       pairY[k] = combined(columns[2]);
     }
-    add();
+    add(STRAY_BINARY);
   }
   for (let k = singles; k < at; k++) out.weight[k] /= RATIOS;
   return { singles, count: at, ...out };
+}
+
+/** What a segment may stray from the curve in colour, mag, and four times that in magnitude: less than what photometry resolves. */
+const STRAY_SINGLE = 0.0005;
+const STRAY_BINARY = 0.0015;
+
+/** Whether points from one to another can stand as one segment, with stars spread evenly along it. */
+function isStraight(
+  x: Float64Array,
+  y: Float64Array,
+  gain: Float64Array,
+  from: number,
+  to: number,
+  stray: number,
+): boolean {
+  let total = 0;
+  for (let i = from; i < to; i++) total += gain[i];
+  if (!(total > 0)) return false;
+  let part = 0;
+  for (let i = from + 1; i < to; i++) {
+    part += gain[i - 1];
+    const share = part / total;
+    if (Math.abs(x[i] - x[from] - share * (x[to] - x[from])) > stray) return false;
+    if (Math.abs(y[i] - y[from] - share * (y[to] - y[from])) > 4 * stray) return false;
+  }
+  return true;
 }

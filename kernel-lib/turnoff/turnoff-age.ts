@@ -6,18 +6,20 @@ import type { Band, ColourName } from '../quantity/band';
 import { type Measured, measured, measuredFromSigma } from '../quantity/measured';
 import { checkOptions, checkRange } from '../quantity/options';
 import { escapeHtml, htmlTable, presentable, textTable } from '../quantity/present';
+import { type AgePosterior, agePosterior } from './age-posterior';
 import {
   CLUSTER_OPTIONS,
   type ClusterOptions,
   type ClusterSetting,
   guessOf,
-  regionOf,
   sequenceMaker,
   settleCluster,
 } from './cluster-setting';
-import { UNEVOLVED_BELOW } from './main-sequence-fit';
-import { findPeak } from './peak';
-import { makeWorkspace, type ReadyStars, type Region, readyStars, sequenceLogLikelihood } from './sequence-likelihood';
+import { metallicityNodes } from './metallicity-nodes';
+import { type Comparison, likelihoodAt, makeComparison, type PlaceFit, type PlacePrior } from './place-fit';
+import { thinned } from './place-start';
+import { meanShares, readyStars } from './sequence-likelihood';
+import { turnoffRegion } from './turnoff-region';
 
 /** What `turnoffAge` takes. */
 export interface TurnoffAgeOptions extends ClusterOptions {
@@ -25,6 +27,11 @@ export interface TurnoffAgeOptions extends ClusterOptions {
   ebv: number | Measured;
   /** Standard error of the metallicity, dex: ages are averaged over it. Default: 0. */
   metallicityError?: number;
+  /**
+   * Magnitude down from which the catalogue would hold every star of the cluster, apparent (absolute with 'parallax'). Default: 4 mag
+   * above the brightest star where the sequence bends or giants are there, else the brightest star of the sequence.
+   */
+  brightLimit?: number;
   /** log10 of ages searched, years. Default: 7 to 10.15, within the model's range. */
   logAgeRange?: readonly [number, number];
   /** Called with the share of the work that is done. */
@@ -51,6 +58,9 @@ export interface TurnoffAge {
   readonly magnitudeBand: Band;
   /** Stars in the region that was compared. */
   readonly starCount: number;
+  /** Share of unresolved binaries among them, and of stars that fit no sequence. */
+  readonly binaryShare: number;
+  readonly foreignShare: number;
   readonly model: string;
   readonly metallicity: number;
   /** Probability over log10 of age: places and density, normalised. */
@@ -60,21 +70,12 @@ export interface TurnoffAge {
   readonly notes: readonly string[];
 }
 
-const STEP_COARSE = 0.05;
-const STEP_FINE = 0.0125;
-/** Fall of log-likelihood below the best at which an age is no longer looked at closely. */
-const FAR_BELOW = 14;
-/** Gauss-Hermite nodes, in standard deviations, for distance and metallicity. */
-const HERMITE = [
-  { at: -Math.sqrt(3), weight: 1 / 6 },
-  { at: 0, weight: 2 / 3 },
-  { at: Math.sqrt(3), weight: 1 / 6 },
-];
 const FEWEST = 8;
-/** Errors of distance and reddening below this, mag, do not move the age. */
-const NEGLIGIBLE = 0.002;
-/** Points of the closest look. */
-const CLOSE = 33;
+/** Stars about the turnoff that are compared, at most. */
+const MOST_STARS = 600;
+/** Share of the peak's height at an end of the range from which the age counts as not bounded there. */
+const HIGH_END = 0.1;
+const FOREIGN_WARNING = 0.2;
 
 /**
  * Age of a cluster from its turnoff region: for each age the main sequence and subgiants of the isochrone, with unresolved binaries, are
@@ -90,141 +91,82 @@ const CLOSE = 33;
  */
 export function turnoffAge(members: Catalogue, options: TurnoffAgeOptions): TurnoffAge {
   const caller = 'turnoffAge';
-  checkOptions(caller, options, [...CLUSTER_OPTIONS, 'ebv', 'metallicityError', 'logAgeRange', 'onProgress']);
+  checkOptions(caller, options, [
+    ...CLUSTER_OPTIONS,
+    'ebv',
+    'metallicityError',
+    'brightLimit',
+    'logAgeRange',
+    'onProgress',
+  ]);
   const { metallicityError = 0, onProgress } = options;
   checkRange(caller, 'metallicityError', metallicityError, 0, 1, 'dex');
   const ebv = guessOf(caller, 'ebv', options.ebv, -0.5, 10, 'mag');
   const setting = settleCluster(caller, members, options);
-  const { stars, order, ridge, bluest, modulus, model, notes } = setting;
-  const faintest = stars.magnitude[order[order.length - 1]] + 0.01;
-  const brightest = stars.magnitude[order[0]];
-  // An empty stretch above the brightest star is part of what is compared: a younger cluster would have stars there.
-  const bright = brightest - 4;
-  const deep = ridge.magnitude[bluest] + UNEVOLVED_BELOW + 0.75;
-  const region = regionOf(setting, bright, Math.min(faintest, Math.max(deep, brightest + 1)));
-  const ready = readyStars(stars, region, setting.colourFloor);
-  if (ready.count < FEWEST) {
-    notes.push(`Only ${ready.count} stars lie about the turnoff; the age rests on them alone.`);
+  const { modulus, model, notes } = setting;
+  const region = turnoffRegion(setting, options.brightLimit);
+  const comparison = makeComparison(
+    setting,
+    thinned(readyStars(setting.stars, region, setting.colourFloor), MOST_STARS),
+    region,
+  );
+  if (comparison.stars.count < FEWEST) {
+    notes.push(`Only ${comparison.stars.count} stars lie about the turnoff; the age rests on them alone.`);
   }
   const [least, most] = model.logAgeRange;
   const [low, high] = options.logAgeRange ?? [Math.max(7, least), Math.min(10.15, most)];
   checkRange(caller, 'logAgeRange[0]', low, least, most);
   checkRange(caller, 'logAgeRange[1]', high, low, most);
 
-  const compositions = metallicityNodes(setting, metallicityError);
-  const makers = compositions.map((c) => ({ ...c, sequenceAt: sequenceMaker(setting, c.metallicity) }));
-  const central = makers[makers.length >> 1].sequenceAt;
-  const work = makeWorkspace(ready.count);
-  const at = (sequenceAt: typeof central, logAge: number, e: number, dm: number) =>
-    oneLikelihood(setting, ready, region, work, sequenceAt(logAge).sequence, e, dm);
-
-  // At each age the reddening is free within its error: the stars about the turnoff often know it better than it was given.
-  const overReddening = (sequenceAt: typeof central, logAge: number, dm: number): number => {
-    if (!(ebv.error > NEGLIGIBLE)) return at(sequenceAt, logAge, ebv.value, dm);
-    const prior = (e: number) => -0.5 * ((e - ebv.value) / ebv.error) ** 2;
-    const reach = 4 * ebv.error;
-    const peak = findPeak(
-      (e) => at(sequenceAt, logAge, e, dm) + prior(e),
-      ebv.value,
-      ebv.error / 2,
-      ebv.value - reach,
-      ebv.value + reach,
-    );
-    return Number.isFinite(peak.top)
-      ? peak.top + Math.log((peak.sigma || ebv.error) / ebv.error)
-      : Number.NEGATIVE_INFINITY;
-  };
-
-  const coarse = steps(low, high, STEP_COARSE);
-  const first = coarse.map((a, i) => {
-    onProgress?.(i, 2 * coarse.length);
-    return overReddening(central, a, modulus.value);
-  });
-  const top = Math.max(...first);
-  if (!Number.isFinite(top)) {
+  const prior = { ebv, modulus };
+  const makers = metallicityNodes(model, setting.metallicity, metallicityError).map((node) => ({
+    log: Math.log(node.weight),
+    sequenceAt: sequenceMaker(setting, node.metallicity),
+  }));
+  const posterior = agePosterior(comparison, makers, prior, [low, high], onProgress);
+  if (posterior === null) {
     throw new Error(
       `${caller}: no age between 10^${low} and 10^${high} years gives a main sequence where these stars lie.`,
     );
   }
-  const from = Math.max(low, coarse[first.findIndex((v) => v > top - FAR_BELOW)] - STEP_COARSE);
-  const to = Math.min(
-    high,
-    coarse[coarse.length - 1 - [...first].reverse().findIndex((v) => v > top - FAR_BELOW)] + STEP_COARSE,
-  );
-  const modulusNodes = modulus.error > NEGLIGIBLE ? HERMITE : [{ at: 0, weight: 1 }];
-  const densityAt = (a: number) =>
-    logSum(
-      makers.flatMap(({ sequenceAt, weight }) =>
-        modulusNodes.map(
-          (m) => overReddening(sequenceAt, a, modulus.value + m.at * modulus.error) + Math.log(weight * m.weight),
-        ),
-      ),
+  const { sequence, fit } = posterior.best;
+  likelihoodAt(comparison, sequence, fit.ebv, fit.modulus);
+  const shares = meanShares(comparison.work);
+  notes.push(...doubts(shares.foreign, fit, prior));
+  return conclude(setting, comparison, posterior, [low, high], ebv.value, shares);
+}
+
+/** What makes the comparison doubtful. */
+function doubts(foreign: number, fit: PlaceFit, prior: PlacePrior): string[] {
+  const out: string[] = [];
+  if (foreign > FOREIGN_WARNING) {
+    out.push(
+      `About ${Math.round(100 * foreign)} % of the stars about the turnoff fit no sequence: check membership, distance and reddening.`,
     );
-  let fine = steps(from, to, Math.max(STEP_FINE, (to - from) / 120));
-  const half = coarse.length + Math.round(coarse.length / 2);
-  let logDensity = fine.map((a, i) => {
-    onProgress?.(coarse.length + Math.round((0.5 * coarse.length * (i + 1)) / fine.length), 2 * coarse.length);
-    return densityAt(a);
-  });
-  // Many stars pin the age to less than a step: then look again, closely, where it lies.
-  for (let round = 0; round < 2; round++) {
-    const best = Math.max(...logDensity);
-    const first = logDensity.findIndex((v) => v > best - 10);
-    const last = logDensity.length - 1 - [...logDensity].reverse().findIndex((v) => v > best - 10);
-    if (last - first > 16) break;
-    fine = evenly(fine[Math.max(0, first - 1)], fine[Math.min(fine.length - 1, last + 1)], CLOSE);
-    logDensity = fine.map((a) => densityAt(a));
-    onProgress?.(half + Math.round((round + 1) * 0.25 * coarse.length), 2 * coarse.length);
   }
-  onProgress?.(2 * coarse.length, 2 * coarse.length);
-  return conclude(setting, ready, fine, logDensity, [low, high], ebv.value);
+  const pulls = [
+    ['E(B-V)', fit.ebv, prior.ebv],
+    ['distance modulus', fit.modulus, prior.modulus],
+  ] as const;
+  for (const [name, at, { value, error }] of pulls) {
+    if (error > 0 && Math.abs(at - value) > 2.5 * error) {
+      out.push(
+        `The turnoff region wants ${name} ${at.toFixed(3)}, ${(Math.abs(at - value) / error).toFixed(1)} errors from the value given.`,
+      );
+    }
+  }
+  return out;
 }
 
-function oneLikelihood(
-  setting: ClusterSetting,
-  ready: ReadyStars,
-  region: Region,
-  work: ReturnType<typeof makeWorkspace>,
-  sequence: Parameters<typeof sequenceLogLikelihood>[1] | null,
-  e: number,
-  dm: number,
-): number {
-  if (sequence === null) return Number.NEGATIVE_INFINITY;
-  return sequenceLogLikelihood(ready, sequence, e * setting.perExcess, dm + e * setting.perExtinction, region, work);
-}
-
-/** Nodes of the metallicity, held within the model's range. */
-function metallicityNodes(setting: ClusterSetting, error: number): { metallicity: number; weight: number }[] {
-  const { metallicity, model } = setting;
-  if (!(error > 0)) return [{ metallicity, weight: 1 }];
-  const [low, high] = model.metallicityRange;
-  return HERMITE.map(({ at, weight }) => ({
-    metallicity: Math.min(Math.max(metallicity + at * error, low), high),
-    weight,
-  }));
-}
-
-function steps(low: number, high: number, step: number): number[] {
-  return evenly(low, high, Math.max(2, Math.round((high - low) / step) + 1));
-}
-
-function evenly(low: number, high: number, count: number): number[] {
-  return Array.from({ length: count }, (_, i) => low + ((high - low) * i) / (count - 1));
-}
-
-function logSum(terms: readonly number[]): number {
-  const top = Math.max(...terms);
-  if (!Number.isFinite(top)) return Number.NEGATIVE_INFINITY;
-  return top + Math.log(terms.reduce((s, t) => s + Math.exp(t - top), 0));
-}
+const show3 = (x: number) => Number(x.toPrecision(3));
 
 function conclude(
   setting: ClusterSetting,
-  ready: ReadyStars,
-  grid: readonly number[],
-  logDensity: readonly number[],
+  comparison: Comparison,
+  { logAge: grid, logDensity }: AgePosterior,
   range: readonly [number, number],
   ebv: number,
+  shares: { readonly binary: number; readonly foreign: number },
 ): TurnoffAge {
   const { stars, model, metallicity, notes } = setting;
   const n = grid.length;
@@ -243,18 +185,26 @@ function conclude(
   };
   const [value, lower, upper] = [quantile(0.5), quantile(0.158655), quantile(0.841345)];
   const [far, beyond] = [quantile(0.025), quantile(0.975)];
-  const share = (i: number) => (density[i] * (grid[n - 1] - grid[0])) / n;
-  const young = grid[0] <= range[0] + 1e-6 && share(0) > 0.02;
-  const old = grid[n - 1] >= range[1] - 1e-6 && share(n - 1) > 0.02;
+  const young = grid[0] <= range[0] + 1e-6 && Math.exp(logDensity[0] - peak) > HIGH_END;
+  const old = grid[n - 1] >= range[1] - 1e-6 && Math.exp(logDensity[n - 1] - peak) > HIGH_END;
   const wide = beyond - far > 1;
   const bounded = !young && !old && !wide;
-  if (young)
-    notes.push(
-      'The stars give an upper limit to the age only: no turnoff shows in them. The lower end is set by the range searched.',
+  const limits = {
+    young: `younger than ${show3(10 ** (beyond - 9))} Gyr`,
+    old: `older than ${show3(10 ** (far - 9))} Gyr`,
+  };
+  if (young && old)
+    notes.unshift('The stars do not bound the age on either side: the interval is that of the range searched.');
+  else if (young)
+    notes.unshift(
+      `The stars give an upper limit to the age only: ${limits.young} (95 %). The lower end is that of the range searched.`,
     );
-  if (old) notes.push('The stars give a lower limit to the age only. The upper end is set by the range searched.');
+  else if (old)
+    notes.unshift(
+      `The stars give a lower limit to the age only: ${limits.old} (95 %). The upper end is that of the range searched.`,
+    );
   if (wide && !young && !old)
-    notes.push('The age is hardly bounded: the turnoff is not in the data, or too few stars lie about it.');
+    notes.unshift('The age is hardly bounded: the turnoff is not in the data, or too few stars lie about it.');
   const massAt = (logAge: number) =>
     model === analyticModel
       ? turnoffMass({ age: 10 ** (logAge - 9), metallicity })
@@ -285,7 +235,9 @@ function conclude(
     textbookRatio: textbookAge / age,
     colourName: stars.colourName,
     magnitudeBand: stars.magnitudeBand,
-    starCount: ready.count,
+    starCount: comparison.stars.count,
+    binaryShare: shares.binary,
+    foreignShare: shares.foreign,
     model: model.name,
     metallicity,
     posterior: Object.freeze({ logAge: Float64Array.from(grid), density }),
