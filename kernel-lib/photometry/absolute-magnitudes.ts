@@ -8,7 +8,7 @@ import { magnitudesInto } from './light-table';
 export interface AbsoluteMagnitudesOptions<B extends Band = Band> {
   /** log10 of solar luminosities, shape (n). */
   readonly logL: ArrayLike<number>;
-  /** log10 of K, 3.377 to 4.756, shape (n). */
+  /** log10 of K, 3.377 to 4.876, shape (n). */
   readonly logTeff: ArrayLike<number>;
   /** log10 of cm/s2, one for all or shape (n). Default: dwarfs. */
   readonly logGravity?: number | ArrayLike<number>;
@@ -27,11 +27,11 @@ export const DWARF_GRAVITY = 5;
  * Absolute magnitudes of stars in any bands, by the composite scale: the mean dwarf sequence, smoothed, with metallicity terms for F, G and K
  * stars, and giants and supergiants blended in by gravity.
  * @param options see AbsoluteMagnitudesOptions
- * @returns an array of shape (n) a band, mag; NaN for dwarfs cooler than 2380 K (U 2810, Rc G BP RP 2570, Hp 4170 K), giants cooler than
- *   3200 K (U 3800, Hp 4350 K: no colours of cooler ones were published in all bands), stars hotter than 57,000 K, [Fe/H] out of range, and
- *   wherever an input is NaN. White dwarfs are NaN where they lie outside these temperatures; within them they get the light of a dwarf of
- *   the same temperature, good for a sketch only: V to 0.1 mag, but B-V and BP-RP up to 0.2 mag too blue and U-B up to 0.5 mag too red (common
- *   practice, no source).
+ * @returns an array of shape (n) a band, mag; NaN for dwarfs cooler than 2380 K (U, Rc, G, BP, RP 2570 K; Hp 4170 K), giants cooler than 2500 K (Hp
+ *   4350 K), stars hotter than 75,000 K, [Fe/H] out of range, and wherever an input is NaN. Beyond the published ranges, but within these, the
+ *   relations go on straight: dwarfs hotter than O3 (45,900 K), giants later than M7 (3130 K, V then good to 0.5 mag only). U of M giants is
+ *   good to 0.3 mag, of other metallicities to 0.1 mag for each dex. White dwarfs get the light of a dwarf of the same temperature, good for a
+ *   sketch only: V to 0.1 mag, but B-V and BP-RP up to 0.2 mag too blue and U-B up to 0.5 mag too red (common practice, no source).
  * @throws TypeError for an unknown option or band, RangeError when lengths differ
  * @example absoluteMagnitudes({ logL: [0], logTeff: [3.7613], logGravity: [4.438], bands: ['V'] }).V[0] // => 4.826
  * Sources: Pecaut & Mamajek 2013 and those named in the files of photometry/composite; M_bol of the Sun 4.74 (IAU 2015 Resolution B2).

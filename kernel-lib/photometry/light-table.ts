@@ -4,8 +4,8 @@ import { uniformSpline } from '../numeric/uniform-spline';
 export const GRID_START = 3.36;
 /** Distance of nodes in log10 of temperature: fine against the bends of all relations. */
 export const GRID_STEP = 0.004;
-/** Number of nodes: up to log Teff 4.76. */
-export const GRID_NODES = 351;
+/** Number of nodes: up to log Teff 4.88. */
+export const GRID_NODES = 381;
 /** [Fe/H] for which the table answers, dex. */
 export const METALLICITY_RANGE: readonly [number, number] = [-2.5, 0.5];
 

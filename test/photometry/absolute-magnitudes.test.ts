@@ -45,15 +45,17 @@ describe('absoluteMagnitudes', () => {
     expect(at(2300, 5).V[0]).toBeNaN();
     expect(at(2500, 5).V[0]).not.toBeNaN();
     expect(at(2500, 5).BP[0]).toBeNaN();
-    expect(at(3100, 0.5).V[0]).toBeNaN();
-    expect(at(3300, 0.5).V[0]).not.toBeNaN();
-    expect(at(3300, 0.5).U[0]).toBeNaN();
+    expect(at(2450, 0.5).V[0]).toBeNaN();
+    expect(at(2550, 0.5).V[0]).not.toBeNaN();
+    expect(at(2500, 5).U[0]).toBeNaN();
     expect(at(4000, 5).Hp[0]).toBeNaN();
-    expect(at(60000, 4).V[0]).toBeNaN();
+    expect(at(80000, 4).V[0]).toBeNaN();
     expect(at(5000, 4, -3).V[0]).toBeNaN();
     expect(at(5000, Number.NaN).V[0]).toBeNaN();
     expect(at(Number.NaN, 4).V[0]).toBeNaN();
-    for (let t = 3.41; t < 4.75; t += 0.01) expect(at(10 ** t, 4.5).V[0], `${t}`).not.toBeNaN();
+    for (let t = 3.41; t < 4.87; t += 0.01) {
+      for (const logGravity of [4.5, 3.5, 2, 0, -1]) expect(at(10 ** t, logGravity).V[0], `${t}`).not.toBeNaN();
+    }
   });
 
   it('refuses bad input', () => {

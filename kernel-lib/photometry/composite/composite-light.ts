@@ -8,11 +8,14 @@ import { COOLEST_GIANT, giantLevel } from './giant-level';
 import { dwarfMetallicity, giantMetallicity } from './metallicity-terms';
 import { supergiantDifference } from './supergiant-difference';
 
-/** Hottest star of the dwarf sequence, O3, is 45900 K; above, all goes on straight to 57000 K. */
-const HOTTEST = 4.756;
-/** Coolest dwarf of each band: where the table's column ends, for BP and RP where the colour turns back. */
+/** Hottest star of the dwarf sequence, O3, is 45,900 K; above, all goes on straight to 75,000 K, the hottest stars that models make. */
+const HOTTEST = 4.876;
+/**
+ * Coolest dwarf of each band: where the table's column ends; for G, BP, RP and Rc where the colour turns back. U-B, which ends at M6 (2810 K),
+ * goes on straight to 2570 K.
+ */
 const COOLEST: Readonly<Record<Band, number>> = {
-  U: Math.log10(2810),
+  U: Math.log10(2570),
   B: Math.log10(2380),
   V: Math.log10(2380),
   Rc: Math.log10(2570),
@@ -25,7 +28,7 @@ const COOLEST: Readonly<Record<Band, number>> = {
   RP: Math.log10(2570),
   Hp: 3.62,
 };
-const COOLEST_GIANT_IN: Readonly<Partial<Record<Band, number>>> = { U: Math.log10(3800), Hp: Math.log10(4350) };
+const COOLEST_GIANT_IN: Readonly<Partial<Record<Band, number>>> = { Hp: Math.log10(4350) };
 
 /** Metallicities at which the terms are met exactly: the nearly quadratic relations differ from them by less than 0.01 mag between. */
 const EXACT = [-2, -0.6];

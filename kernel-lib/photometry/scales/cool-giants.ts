@@ -12,6 +12,16 @@ export function vanBelleColour(temperature: number): number {
   return Math.log10((temperature - 3030) / 4750) / -0.187;
 }
 
+/**
+ * V-K of giants M5 to M7 as a function of log Teff, and straight on to 2500 K, mag.
+ * Source: V-K 5.96 and 7.8 of types M5 and M7 (Bessell & Brett 1988) at their temperatures 3434 and 3126 K (Fluks et al. 1994, A&AS 105, 311); from
+ * memory. Cooler giants have no colours in these sources; the line is there so that the tips of giant branches have a place, and V is
+ * good to 0.5 mag there. Fluks et al. put M10 at 2500 K.
+ */
+export function coolestGiantColour(logTeff: number): number {
+  return 7.8 + 45 * (3.495 - logTeff);
+}
+
 /** Bolometric correction in K from J-K of M giants, mag. Source: Bessell & Wood 1984, PASP 96, 247; from memory. */
 export function bessellWoodCorrection(jk: number): number {
   return 0.6 + jk * (2.65 - 0.67 * jk);

@@ -15,7 +15,7 @@ import type { ColourRelation, TemperatureScale } from './temperature-scale';
 import { thetaColourRelation, thetaScale } from './theta-scale';
 
 const FROM_LOG = 3.377;
-const TO_LOG = 4.756;
+const TO_LOG = 4.876;
 
 /** A relation from a colour that is a function of log Teff. */
 function fromColour(colour: (logTeff: number) => number, low: number, high: number): ColourRelation {
