@@ -49,9 +49,11 @@ export { type StaticFigureOptions, staticFigure } from './diagrams/static-svg';
 // distance
 export { type ClusterDistance, type ClusterDistanceOptions, clusterDistance } from './distance/cluster-distance';
 export { type StarDistancesOptions, starDistances } from './distance/star-distances';
-// extinction
 export { type BandExtinctionOptions, bandExtinction, colourExcessRatio } from './extinction/band-coefficients';
+// extinction
+export { type ConvertReddeningOptions, convertReddening, type ReddeningMeasure } from './extinction/convert-reddening';
 export { type DereddenOptions, deredden } from './extinction/deredden';
+export { gaiaExtinctionRatio, intrinsicGaiaColour } from './extinction/gaia-extinction';
 export { extinctionLaw, type LawName } from './extinction/laws';
 
 // membership
@@ -89,14 +91,19 @@ export { show } from './notebook/display';
 // notebook
 export { interruptible } from './notebook/interruptible';
 export { type Progress, type ProgressOptions, progress } from './notebook/progress';
-// photometry
 export { type AbsoluteMagnitudesOptions, absoluteMagnitudes } from './photometry/absolute-magnitudes';
+// photometry
+export { BANDS, type BandDescription } from './photometry/bands';
 export { type BolometricCorrectionOptions, bolometricCorrection } from './photometry/bolometric-correction';
 export {
   type ColourTemperatureOptions,
   colourFromTemperature,
   temperatureFromColour,
 } from './photometry/colour-temperature';
+export { combineMagnitudes } from './photometry/combine-magnitudes';
+export { hipparcosMinusV } from './photometry/hipparcos-magnitude';
+export { type PhotometricScales, photometricScales, type ScaleEntry } from './photometry/photometric-scales';
+export { SOLAR_COLOURS, SOLAR_MAGNITUDES, type SolarValue } from './photometry/solar-photometry';
 export {
   type LuminosityClass,
   SPECTRAL_CLASSES,
