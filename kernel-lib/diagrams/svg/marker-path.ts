@@ -81,8 +81,9 @@ export function markerPath(
   const outline = dots ? 'h0' : shape === undefined ? circle(size / 2) : shape.outline(size / 2);
   const each = dots ? 9 : outline.length + 11;
   const kind = dots ? 'dots' : open || shape?.stroked ? 'stroke' : 'outline';
+  let places: Uint32Array = Uint32Array.from(xs.keys());
   for (let cell = 0.1; ; cell *= 1.6) {
-    const places = distinctPlaces(xs, ys, cell);
+    places = distinctPlaces(xs, ys, places, cell);
     if (places.length * each > budget && cell < size) continue;
     const step = Math.max(1, Math.ceil((places.length * each) / budget));
     let d = '';
@@ -106,10 +107,10 @@ function circle(half: number): string {
   return `m-${r},0a${r},${r} 0 1 0 ${px(2 * half)},0a${r},${r} 0 1 0 -${px(2 * half)},0`;
 }
 
-/** Indices of the first point in every occupied cell of a grid, in order of rows so that steps between them are short. */
-function distinctPlaces(xs: Float64Array, ys: Float64Array, cell: number): Uint32Array {
+/** Indices of the first of some points in every occupied cell of a grid, in order of rows so that steps between them are short. */
+function distinctPlaces(xs: Float64Array, ys: Float64Array, among: Uint32Array, cell: number): Uint32Array {
   const seen = new Map<number, number>();
-  for (let i = 0; i < xs.length; i++) {
+  for (const i of among) {
     if (!Number.isFinite(xs[i]) || !Number.isFinite(ys[i])) continue;
     const key = Math.round(ys[i] / cell) * 1e6 + Math.round(xs[i] / cell);
     if (!seen.has(key)) seen.set(key, i);
