@@ -16,7 +16,9 @@ export interface CommonVelocity {
 
 /** Tangential velocities count as alike within this, km/s, beside their errors. */
 const NEAR = 3;
-const PAIRS = 1500;
+const PAIRS = 4000;
+/** Stars are compared with stars whose parallax is the same within this factor: clusters are compact. */
+const WINDOW = 1.3;
 /** Stars that take part in the search, at most. */
 const MOST_STARS = 4000;
 /** Weak prior on a component of the velocity, km/s. */
@@ -32,25 +34,32 @@ export function commonVelocities(stars: Stars, stream: RandomStream, limit: numb
   if (use.length < 4) return [];
   const found: CommonVelocity[] = [];
   for (let pair = 0; pair < PAIRS; pair++) {
-    const i = use[stream.below(use.length)];
-    const j = use[stream.below(use.length)];
-    const ratio = stars.values[3 * i + 2] / stars.values[3 * j + 2];
-    if (i === j || ratio > 2 || ratio < 0.5) continue;
-    let velocity = solve(stars, Uint32Array.of(i, j));
+    const first = stream.below(use.length);
+    let middle = stars.values[3 * use[first] + 2];
+    let window = within(stars, use, middle);
+    const j = window[stream.below(window.length)];
+    if (j === use[first]) continue;
+    let velocity = solve(stars, Uint32Array.of(use[first], j));
     // Refine on the stars that agree, twice.
     for (let round = 0; round < 2 && velocity !== null; round++) {
-      const near = agreeing(stars, use, velocity, NEAR);
-      velocity = near.length < 4 ? null : solve(stars, near);
+      const near = agreeing(stars, window, velocity, NEAR);
+      if (near.length < 4) {
+        velocity = null;
+        break;
+      }
+      velocity = solve(stars, near);
+      // In order of parallax, hence the median.
+      middle = stars.values[3 * near[near.length >> 1] + 2];
+      window = within(stars, use, middle);
     }
     if (velocity === null) continue;
-    const inner = agreeing(stars, use, velocity, NEAR);
-    const outer = agreeing(stars, use, velocity, 3 * NEAR);
+    const inner = agreeing(stars, window, velocity, NEAR);
+    const outer = agreeing(stars, window, velocity, 3 * NEAR);
     const expected = (outer.length - inner.length) / 8;
     const excess = inner.length - expected;
     const significance = excess / Math.sqrt(expected + 1);
     if (inner.length < 4 || significance < 2) continue;
-    const parallaxes = Float64Array.from(inner, (k) => stars.values[3 * k + 2]).sort();
-    const middle = parallaxes[Math.floor(parallaxes.length / 2)];
+    const parallaxes = Float64Array.from(inner, (k) => stars.values[3 * k + 2]);
     const low = parallaxes[Math.floor(parallaxes.length * 0.16)];
     const high = parallaxes[Math.floor(parallaxes.length * 0.84)];
     found.push({ velocity, parallax: middle, parallaxSpread: (high - low) / 2, excess, significance });
@@ -67,7 +76,7 @@ export function commonVelocities(stars: Stars, stream: RandomStream, limit: numb
   return kept;
 }
 
-/** Stars with a parallax of at least five errors, a seeded choice of them when there are many. */
+/** Stars with a parallax of at least five errors, a seeded choice of them when there are many, in order of parallax. */
 function usable(stars: Stars, stream: RandomStream): Uint32Array {
   const rows: number[] = [];
   for (let i = 0; i < stars.count; i++) {
@@ -78,7 +87,23 @@ function usable(stars: Stars, stream: RandomStream): Uint32Array {
     const at = k + stream.below(rows.length - k);
     [rows[k], rows[at]] = [rows[at], rows[k]];
   }
-  return Uint32Array.from(rows.slice(0, MOST_STARS));
+  const parallax = (i: number) => stars.values[3 * i + 2];
+  return Uint32Array.from(rows.slice(0, MOST_STARS).sort((a, b) => parallax(a) - parallax(b) || a - b));
+}
+
+/** The stars, in order of parallax, whose parallax is near the given one. */
+function within(stars: Stars, rows: Uint32Array, parallax: number): Uint32Array {
+  const firstAbove = (limit: number) => {
+    let low = 0;
+    let high = rows.length;
+    while (low < high) {
+      const middle = (low + high) >> 1;
+      if (stars.values[3 * rows[middle] + 2] < limit) low = middle + 1;
+      else high = middle;
+    }
+    return low;
+  };
+  return rows.subarray(firstAbove(parallax / WINDOW), firstAbove(parallax * WINDOW));
 }
 
 /** Velocity that the tangential velocities of the stars agree on, by least squares; null when undetermined. */
@@ -106,7 +131,7 @@ function solve(stars: Stars, rows: Uint32Array): [number, number, number] | null
 }
 
 /** The stars whose tangential velocity is that of the given velocity, within so many km/s and their errors. */
-function agreeing(stars: Stars, rows: Uint32Array, velocity: readonly number[], within: number): Uint32Array {
+function agreeing(stars: Stars, rows: Uint32Array, velocity: readonly number[], reach: number): Uint32Array {
   const basis = stars.basis as Float64Array;
   const near = new Uint32Array(rows.length);
   let count = 0;
@@ -123,7 +148,7 @@ function agreeing(stars: Stars, rows: Uint32Array, velocity: readonly number[], 
     const c = 6 * i;
     const error =
       scale * scale * (stars.covariance[c] + stars.covariance[c + 3]) + (speed * stars.covariance[c + 5]) / plx ** 2;
-    if (d0 * d0 + d1 * d1 < within * within + error) near[count++] = i;
+    if (d0 * d0 + d1 * d1 < reach * reach + error) near[count++] = i;
   }
   return near.slice(0, count);
 }

@@ -60,7 +60,9 @@ export function simulatedField(options: {
     const other = 0.8 * u - 0.6 * v;
     const scale = plx / KMS_PER_AU_PER_YEAR;
     const trueRa = isMember ? pmRa + own * random.normal() : (tilt - 10) * scale;
-    const trueDec = isMember ? pmDec + own * random.normal() : (other - 6 - (d > 1500 ? 20 * (1 - 1500 / d) : 0)) * scale;
+    const trueDec = isMember
+      ? pmDec + own * random.normal()
+      : (other - 6 - (d > 1500 ? 20 * (1 - 1500 / d) : 0)) * scale;
     const e = 0.02 * Math.sqrt(1 + 10 ** (0.4 * (g - 14.5)));
     const errors = [1.05 * e, 0.95 * e, 0.9 * e];
     const rho = correlations ? [0.3, -0.4, 0.25] : [0, 0, 0];
