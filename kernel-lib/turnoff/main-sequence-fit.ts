@@ -166,7 +166,7 @@ function fitSequence(caller: string, members: Catalogue, options: MainSequenceFi
   const weighed = good.map((p) => ({ ...p.fit, share: Math.exp(p.log - top) }));
   const edge = best === undefined || best.fit.ebv < range[0] || best.fit.ebv > range[1];
   if (edge) notes.push('The best reddening lies outside the range searched, so it is not determined.');
-  const drift = given === null && setting.modulus.error > 0 ? slopeOf(weighed) : 0;
+  const drift = setting.modulus.error > 0 ? slopeOf(weighed) : 0;
   return {
     ebv: edge
       ? unknown()
@@ -242,6 +242,8 @@ function slopeOf(parts: readonly Weighed[]): number {
 const unknown = () => measured(Number.NaN, Number.NaN, Number.NaN, 'mag');
 
 function quantiles(parts: readonly GaussianPart[]): Measured {
+  // What was held has no error.
+  if (parts.every((p) => p.sigma === 0)) return measured(parts[0].at, parts[0].at, parts[0].at, 'mag');
   const spread = parts.map((p) => ({ ...p, sigma: Math.max(p.sigma, 1e-9) }));
   const at = (q: number) => gaussianSumQuantile(spread, q);
   const value = at(0.5);

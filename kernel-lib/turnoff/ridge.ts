@@ -123,7 +123,7 @@ function fitCore(residual: Float64Array, errors: Float64Array, sorted: Float64Ar
 }
 
 /** Exponential tail to the red, blurred by the width of the core (a rough convolution: exact far from the centre). */
-function tailDensity(d: number, s: number): number {
+export function tailDensity(d: number, s: number): number {
   const x = d / BINARY_TAIL;
   const edge = 1 / (1 + Math.exp((-1.7 * (d - s)) / s));
   return (edge * Math.exp(-Math.max(x, 0))) / BINARY_TAIL;

@@ -5,15 +5,15 @@ import { checkOptions, checkRange } from '../quantity/options';
 import { htmlTable, presentable, textTable } from '../quantity/present';
 import { randomStream } from '../quantity/random';
 import {
-  bluestPoint,
   CLUSTER_OPTIONS,
   type ClusterOptions,
   type ClusterSetting,
+  giantCorner,
   guessOf,
   settleCluster,
 } from './cluster-setting';
-import { findRidge } from './ridge';
-import { windowFor } from './ridge-line';
+import type { Ridge } from './ridge';
+import { curveColour, degreeFor, fitTurnoffCurve } from './turnoff-curve';
 
 /** What `turnoffPoint` takes. */
 export interface TurnoffPointOptions extends ClusterOptions {
@@ -38,18 +38,24 @@ export interface TurnoffPoint {
   readonly absoluteMagnitude: Measured;
   /** Bootstrap correlation of observed colour and magnitude. */
   readonly correlation: number;
+  /** Stars about the turnoff that the curve was fitted to. */
   readonly starCount: number;
+  /** Whether the sequence turns within the stars given; false makes the point a limit. */
+  readonly turned: boolean;
   readonly notes: readonly string[];
 }
 
 /**
- * Turnoff point read from the ridge line: the bluest place of the main sequence, by a parabola through the ridge about its bluest point,
- * with errors from star resampling and photometric noise.
+ * Turnoff point as the stars show it: the bluest place of the sequence of single stars, from a smooth curve through the stars about
+ * the turnoff (giants apart), with errors from star resampling and photometric noise. Binaries to the red of the curve do not drag it.
  * @param members catalogue of member stars
+ * @returns colour and magnitude as observed and intrinsic, with 68 % intervals and the correlation of the two; a note where the sequence
+ *   does not turn within the stars given, so that the point is only a limit
  * @throws Error when bands are missing or fewer than 12 stars have them; TypeError or RangeError on options
  * @example turnoffPoint(members, { ebv: 0.05, distanceModulus: 9.4 }).colour
- * A ridge through few stars rounds the turnoff off: with under a hundred members the colour comes out some hundredths too red. The age
- * of `turnoffAge` does not rest on this point.
+ * On invented clusters of 0.3 to 5 Gyr the point lies 0.001 to 0.006 mag redward and up to 0.08 mag below the bluest point of the isochrone,
+ * as a smooth curve rounds the turnoff off and binaries of small mass ratio look single; the intervals include 0.005 and 0.07 mag for
+ * that. The age of `turnoffAge` does not rest on this point.
  */
 export function turnoffPoint(members: Catalogue, options: TurnoffPointOptions): TurnoffPoint {
   const caller = 'turnoffPoint';
@@ -58,14 +64,13 @@ export function turnoffPoint(members: Catalogue, options: TurnoffPointOptions): 
   checkRange(caller, 'resamples', resamples, 20, 10_000);
   const ebv = guessOf(caller, 'ebv', options.ebv, -0.5, 10, 'mag');
   const setting = settleCluster(caller, members, options);
-  const best = vertexOf(setting.ridge);
-  const samples = resample(setting, Math.round(resamples), seed);
-  const around = (values: Float64Array, centre: number) => {
+  const { best, samples } = curveAndSamples(setting, Math.round(resamples), seed);
+  const around = (values: Float64Array, centre: number, method: number) => {
     const m = measuredFromSamples(values, 'mag');
     return measured(
       centre,
-      Math.min(centre, centre - (m.value - m.lower)),
-      Math.max(centre, centre + (m.upper - m.value)),
+      centre - Math.hypot(m.value - m.lower, method),
+      centre + Math.hypot(m.upper - m.value, method),
       'mag',
     );
   };
@@ -78,13 +83,14 @@ export function turnoffPoint(members: Catalogue, options: TurnoffPointOptions): 
       'mag',
     );
   };
-  const observedColour = around(samples.colour, best.colour);
-  const observedMagnitude = around(samples.magnitude, best.magnitude);
+  const observedColour = around(samples.colour, best.colour, METHOD_ERROR.colour);
+  const observedMagnitude = around(samples.magnitude, best.magnitude, METHOD_ERROR.magnitude);
   const { perExcess, perExtinction, modulus, stars } = setting;
   const notes = [...setting.notes];
-  if (setting.bluest === 0) {
+  const turned = best.above >= LEAST_ABOVE;
+  if (!turned) {
     notes.push(
-      'The ridge is bluest at its bright end: the sequence does not turn off within the stars given, so this is a limit.',
+      'The sequence is bluest at its bright end: it does not turn off within the stars given, so this is a limit.',
     );
   }
   const point: TurnoffPoint = {
@@ -99,7 +105,8 @@ export function turnoffPoint(members: Catalogue, options: TurnoffPointOptions): 
       Math.hypot(modulus.error, ebv.error * perExtinction),
     ),
     correlation: correlation(samples.colour, samples.magnitude),
-    starCount: setting.order.length,
+    starCount: samples.starCount,
+    turned,
     notes: Object.freeze(notes),
   };
   const head = ['turnoff', 'colour', 'magnitude'];
@@ -118,51 +125,72 @@ export function turnoffPoint(members: Catalogue, options: TurnoffPointOptions): 
   });
 }
 
-/** Bluest place of a ridge: vertex of a parabola through the points about the bluest one, held within them. */
-function vertexOf(ridge: { colour: Float64Array; magnitude: Float64Array; stars: Float64Array }): {
-  colour: number;
-  magnitude: number;
-} {
-  const k = bluestPoint(ridge as never);
-  const n = ridge.colour.length;
-  if (k === 0 || k === n - 1) return { colour: ridge.colour[k], magnitude: ridge.magnitude[k] };
-  const [m0, m1, m2] = [ridge.magnitude[k - 1], ridge.magnitude[k], ridge.magnitude[k + 1]];
-  const [c0, c1, c2] = [ridge.colour[k - 1], ridge.colour[k], ridge.colour[k + 1]];
-  const s0 = (c1 - c0) / (m1 - m0);
-  const s1 = (c2 - c1) / (m2 - m1);
-  const bend = (s1 - s0) / (m2 - m0);
-  if (!(bend > 0)) return { colour: c1, magnitude: m1 };
-  const at = 0.5 * (m0 + m1) - s0 / (2 * bend);
-  const magnitude = Math.min(Math.max(at, m0), m2);
-  return { magnitude, colour: c0 + (magnitude - m0) * (s0 + bend * (magnitude - m1)) };
+/** What the method itself may be off by, mag: see turnoffPoint. */
+const METHOD_ERROR = { colour: 0.005, magnitude: 0.07 };
+/** Core stars above the bluest place that show that the sequence turns. */
+const LEAST_ABOVE = 2;
+/** Stars this much fainter than the bluest point of the ridge belong to the turnoff's curve, mag. */
+const BELOW = 1.75;
+const LEAST_CURVE = 12;
+
+/** Rows of the stars that the curve goes through, bright to faint. */
+function curveRows(setting: ClusterSetting): Uint32Array {
+  const { stars, order, ridge, bluest } = setting;
+  const { giantColour, giantMagnitude } = giantCorner(setting);
+  const dwarfs = order.filter((i) => !(stars.colour[i] > giantColour && stars.magnitude[i] < giantMagnitude));
+  const wanted = dwarfs.filter((i) => stars.magnitude[i] <= ridge.magnitude[bluest] + BELOW);
+  return wanted.length >= LEAST_CURVE ? wanted : dwarfs.slice(0, LEAST_CURVE);
 }
 
-function resample(setting: ClusterSetting, resamples: number, seed: number) {
-  const { stars, order } = setting;
-  const n = order.length;
+function curveAndSamples(setting: ClusterSetting, resamples: number, seed: number) {
+  const { stars, ridge } = setting;
+  const rows = curveRows(setting);
+  const n = rows.length;
+  const take = (v: Float64Array) => Float64Array.from(rows, (i) => v[i]);
+  const seen = {
+    count: n,
+    colour: take(stars.colour),
+    magnitude: take(stars.magnitude),
+    colourError: take(stars.colourError),
+  };
+  const ends = [seen.magnitude[0], seen.magnitude[n - 1] + 1e-6] as const;
+  const degree = degreeFor(n);
+  const best = fitTurnoffCurve(seen, (m) => ridgeColour(ridge, m), ends, degree, 40);
   const root = randomStream(seed);
-  const colour = new Float64Array(n);
-  const magnitude = new Float64Array(n);
-  const error = new Float64Array(n);
-  const out = { colour: new Float64Array(resamples), magnitude: new Float64Array(resamples) };
-  const window = windowFor(n);
+  const drawn = {
+    count: n,
+    colour: new Float64Array(n),
+    magnitude: new Float64Array(n),
+    colourError: new Float64Array(n),
+  };
+  const out = { colour: new Float64Array(resamples), magnitude: new Float64Array(resamples), starCount: n };
   for (let r = 0; r < resamples; r++) {
     const stream = root.fork(r);
     for (let k = 0; k < n; k++) {
-      const i = order[stream.below(n)];
+      const i = rows[stream.below(n)];
       const em = stars.magnitudeError[i];
       const z = stream.normal();
       const rest = Math.sqrt(Math.max(0, stars.colourError[i] ** 2 - (stars.covariance[i] / em) ** 2));
-      magnitude[k] = stars.magnitude[i] + em * z;
-      colour[k] = stars.colour[i] + (stars.covariance[i] / em) * z + rest * stream.normal();
-      error[k] = stars.colourError[i] * Math.SQRT2;
+      drawn.magnitude[k] = stars.magnitude[i] + em * z;
+      drawn.colour[k] = stars.colour[i] + (stars.covariance[i] / em) * z + rest * stream.normal();
+      drawn.colourError[k] = stars.colourError[i] * Math.SQRT2;
     }
-    const rows = Uint32Array.from({ length: n }, (_, k) => k).sort((p, q) => magnitude[p] - magnitude[q]);
-    const vertex = vertexOf(findRidge(colour, magnitude, error, rows, window));
-    out.colour[r] = vertex.colour;
-    out.magnitude[r] = vertex.magnitude;
+    const curve = fitTurnoffCurve(drawn, (m) => curveColour(best, m), ends, degree, 10);
+    out.colour[r] = curve.colour;
+    out.magnitude[r] = curve.magnitude;
   }
-  return out;
+  return { best, samples: out };
+}
+
+/** Colour of the ridge at a magnitude, by straight lines between its points and level beyond them. */
+function ridgeColour(ridge: Ridge, magnitude: number): number {
+  const { magnitude: m, colour: c } = ridge;
+  const last = m.length - 1;
+  if (magnitude <= m[0]) return c[0];
+  for (let k = 0; k < last; k++) {
+    if (magnitude <= m[k + 1]) return c[k] + ((magnitude - m[k]) / (m[k + 1] - m[k] || 1)) * (c[k + 1] - c[k]);
+  }
+  return c[last];
 }
 
 function correlation(x: Float64Array, y: Float64Array): number {
