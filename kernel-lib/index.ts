@@ -89,7 +89,7 @@ export {
 export { type ZeroAgeStar, type ZeroAgeStars, zeroAge } from './models/zero-age';
 export { show } from './notebook/display';
 // notebook
-export { interruptible } from './notebook/interruptible';
+export { breathe, interruptible } from './notebook/interruptible';
 export { type Progress, type ProgressOptions, progress } from './notebook/progress';
 export { type AbsoluteMagnitudesOptions, absoluteMagnitudes } from './photometry/absolute-magnitudes';
 // photometry

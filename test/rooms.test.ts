@@ -1,4 +1,4 @@
-import { mkdtempSync, readdirSync, readFileSync, statSync } from 'node:fs';
+import { mkdtempSync, readdirSync, readFileSync, rmSync, statSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { dirname, join, relative, resolve, sep } from 'node:path';
 import { fileURLToPath } from 'node:url';
@@ -112,9 +112,10 @@ describe('rooms', () => {
     const face = browserFace(readFileSync(join(LIBRARY, 'index.ts'), 'utf8'));
     expect(face).toMatch(/turnoffAge/);
     expect(face).not.toMatch(/notebook|report/);
-    const file = join(mkdtempSync(join(tmpdir(), 'coeval-rooms-')), 'coeval.mjs');
-    await bundleForBrowser(face, LIBRARY, file, 'silent');
-    const text = readFileSync(file, 'utf8');
+    const folder = mkdtempSync(join(tmpdir(), 'coeval-rooms-'));
+    await bundleForBrowser(face, LIBRARY, join(folder, 'coeval.mjs'), 'silent');
+    const text = readFileSync(join(folder, 'coeval.mjs'), 'utf8');
+    rmSync(folder, { recursive: true });
     expect(text.length).toBeGreaterThan(50_000);
     expect(text).not.toMatch(/from\s*["']node:|\brequire\(["']node:/);
   });

@@ -117,6 +117,11 @@ function readStars(caller: string, members: Catalogue, zeroPoint: number, column
     )
       good.push(i);
   }
+  if (members.rowCount === 0) {
+    throw new Error(
+      `${caller}: the catalogue has no rows: no star passed the last selection. Its history tells where they went.`,
+    );
+  }
   if (good.length === 0) {
     throw new Error(
       `${caller}: none of the ${members.rowCount} rows of ${members.source} has a parallax with a positive error.`,

@@ -47,8 +47,8 @@ export interface FindMembersOptions {
   tolerance?: number;
   /** Of the starts and of the stars that the search is done on when there are very many. Default: 1. */
   seed?: number;
-  /** Called with the share of the work that is done, 0 to 1, and what is being done. */
-  onProgress?: (done: number, stage: string) => void;
+  /** Called with the share of the work that is done (of 1 in all) and what is being done. */
+  onProgress?: (done: number, total: number, note?: string) => void;
 }
 
 const KNOWN: readonly (keyof FindMembersOptions)[] = [
@@ -110,7 +110,7 @@ export function findMembers(catalogue: Catalogue, options: FindMembersOptions = 
   if (reason !== null) return notFound(catalogue, astrometry, settings, null, 0, [reason]);
 
   const stream = randomStream(settings.seed);
-  const progress = options.onProgress ?? (() => undefined);
+  const progress = (done: number, stage: string) => options.onProgress?.(done, 1, stage);
   progress(0, 'field');
   const sample =
     stars.count > SEARCH_STARS ? takeStars(stars, chooseRows(stars.count, SEARCH_STARS, stream.fork(1))) : stars;

@@ -62,7 +62,8 @@ export function clusterSummary(parts: ClusterSummaryParts): ClusterSummary {
     `[Fe/H] ${metallicity === 0 ? '0 (solar)' : metallicity} was assumed, not measured; 0.1 dex more or less moves a turnoff age by several per cent.`,
     'The age interval carries star-to-star scatter, distance, reddening and their errors. It does not carry the error of the stellar models themselves (about 5 % in luminosity and radius as fitted, and the choice of overshooting behind them) nor of the colour-temperature scale.',
     'The distance interval does not include a zero-point error of the parallaxes unless one was given.',
-    ...(age.notes ?? []),
+    // What the age says of models and metallicity stands above in other words.
+    ...(age.notes ?? []).filter((note) => !note.startsWith('Intervals do not include')),
   ];
   const cells = rows.map(([label, m]) => [label, String(m)]);
   const summary: ClusterSummary = {
