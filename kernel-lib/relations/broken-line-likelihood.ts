@@ -14,59 +14,100 @@ export function brokenLineLikelihood(
   points: ErrorPoints,
   spread: SpreadOfX,
 ): (breaks: Float64Array, slopes: Float64Array, intercepts: Float64Array, scatter: number) => number {
-  const n = points.x.length;
-  const x = Float64Array.from(points.x);
-  const y = Float64Array.from(points.y);
-  const correlation = points.correlation ? Float64Array.from(points.correlation) : new Float64Array(n);
-  // A tiny x error stands for none, so that one formula serves all points.
-  const sx = Float64Array.from(points.xError, (e) => Math.max(e, 1e-6));
-  const sy = Float64Array.from(points.yError);
-  const { weights, means, deviations } = spread;
-  const terms = new Float64Array(64);
+  const known = withoutLine(points, spread);
+  const { n, logEvidence, from, share, mean, deviation, y, tilt, variance } = known;
 
   return (breaks, slopes, intercepts, scatter) => {
-    const pieces = slopes.length;
+    const last = slopes.length - 1;
     const scatter2 = scatter * scatter;
-    let sum = 0;
+    let sum = logEvidence;
     for (let i = 0; i < n; i++) {
-      const xx = sx[i] * sx[i];
-      const yy = sy[i] * sy[i] + scatter2;
-      const xy = correlation[i] * sx[i] * sy[i];
-      const determinant = xx * yy - xy * xy;
-      let count = 0;
-      let top = Number.NEGATIVE_INFINITY;
-      for (let k = 0; k < pieces; k++) {
-        const a = slopes[k];
-        const dy = y[i] - intercepts[k];
-        const low = k === 0 ? Number.NEGATIVE_INFINITY : breaks[k - 1];
-        const high = k === pieces - 1 ? Number.POSITIVE_INFINITY : breaks[k];
-        // Quadratic form in the true x: curvature, linear and constant term of the data part.
-        const curve = (yy - 2 * a * xy + a * a * xx) / determinant;
-        const linear = (yy * x[i] - xy * (dy + a * x[i]) + a * xx * dy) / determinant;
-        const constant = (yy * x[i] * x[i] - 2 * xy * x[i] * dy + xx * dy * dy) / determinant;
-        for (let j = 0; j < weights.length; j++) {
-          const inverse = 1 / (deviations[j] * deviations[j]);
-          const A = curve + inverse;
-          const centre = (linear + means[j] * inverse) / A;
-          const root = Math.sqrt(A);
-          const below = (low - centre) * root;
-          const above = (high - centre) * root;
-          if (below > 8.5 || above < -8.5) continue;
-          const share = below < -8.5 && above > 8.5 ? 1 : normalBetween(below, above);
-          if (!(share > 0)) continue;
-          const C = constant + means[j] * means[j] * inverse - A * centre * centre;
-          const term = -0.5 * C + Math.log((weights[j] * share) / (deviations[j] * root)) - 0.5 * Math.log(determinant);
-          terms[count++] = term;
-          if (term > top) top = term;
+      const V = variance[i] + scatter2;
+      let density = 0;
+      let highest = Number.NEGATIVE_INFINITY;
+      // Far outliers underflow: a second round then measures from the highest exponent.
+      for (let round = 0; round < 2; round++) {
+        const offset = round === 0 ? 0 : highest;
+        for (let t = from[i]; t < from[i + 1]; t++) {
+          const m = mean[t];
+          const s = deviation[t];
+          for (let k = 0; k <= last; k++) {
+            const a = slopes[k] - tilt[i];
+            const T = V + a * a * s * s;
+            const miss = y[i] - intercepts[k] - a * m;
+            // Where the true x lies, given x and y, if the line went on as piece k.
+            const centre = m + (a * s * s * miss) / T;
+            const width = s * Math.sqrt(V / T);
+            const below = k === 0 ? Number.NEGATIVE_INFINITY : (breaks[k - 1] - centre) / width;
+            const above = k === last ? Number.POSITIVE_INFINITY : (breaks[k] - centre) / width;
+            if (below > FAR || above < -FAR) continue;
+            const exponent = (-0.5 * miss * miss) / T;
+            if (exponent > highest) highest = exponent;
+            const inside = below < -FAR && above > FAR ? 1 : normalBetween(below, above);
+            density += (share[t] * inside * Math.exp(exponent - offset)) / Math.sqrt(T);
+          }
         }
+        if (density > 1e-280) {
+          sum += offset + Math.log(density);
+          break;
+        }
+        if (round === 1 || highest === Number.NEGATIVE_INFINITY) return Number.NEGATIVE_INFINITY;
+        density = 0;
       }
-      if (count === 0) return Number.NEGATIVE_INFINITY;
-      let total = 0;
-      for (let t = 0; t < count; t++) total += Math.exp(terms[t] - top);
-      sum += top + Math.log(total) - LOG_TWO_PI;
     }
     return sum;
   };
 }
 
-const LOG_TWO_PI = Math.log(2 * Math.PI);
+/** Standard deviations beyond which a Gaussian has nothing left in double precision. */
+const FAR = 8.5;
+/** Components of the spread of x that hold less of a point than this are left out. */
+const NO_SHARE = 1e-15;
+
+/**
+ * What does not depend on the line: for each point and each component of the spread of x the share, mean and deviation of the
+ * true x given the observed one, and y freed of the part of its error that goes with the error of x.
+ */
+function withoutLine(points: ErrorPoints, spread: SpreadOfX) {
+  const n = points.x.length;
+  const components = spread.weights.length;
+  const from = new Uint32Array(n + 1);
+  const share = new Float64Array(n * components);
+  const mean = new Float64Array(n * components);
+  const deviation = new Float64Array(n * components);
+  const y = new Float64Array(n);
+  const tilt = new Float64Array(n);
+  const variance = new Float64Array(n);
+  const density = new Float64Array(components);
+  let logEvidence = -n * Math.log(2 * Math.PI);
+  let stored = 0;
+  for (let i = 0; i < n; i++) {
+    // A tiny x error stands for none, so that one formula serves all points.
+    const sx = Math.max(points.xError[i], 1e-6);
+    const sy = points.yError[i];
+    const r = points.correlation ? points.correlation[i] : 0;
+    const x = points.x[i];
+    tilt[i] = (r * sy) / sx;
+    y[i] = points.y[i] - tilt[i] * x;
+    variance[i] = sy * sy * (1 - r * r);
+    let top = Number.NEGATIVE_INFINITY;
+    for (let j = 0; j < components; j++) {
+      const v = spread.deviations[j] ** 2 + sx * sx;
+      density[j] = Math.log(spread.weights[j]) - 0.5 * Math.log(v) - (0.5 * (x - spread.means[j]) ** 2) / v;
+      top = Math.max(top, density[j]);
+    }
+    logEvidence += top;
+    from[i] = stored;
+    for (let j = 0; j < components; j++) {
+      const q = Math.exp(density[j] - top);
+      if (!(q > NO_SHARE)) continue;
+      const v = spread.deviations[j] ** 2;
+      const gain = v / (v + sx * sx);
+      share[stored] = q;
+      mean[stored] = spread.means[j] + gain * (x - spread.means[j]);
+      deviation[stored++] = sx * Math.sqrt(gain);
+    }
+  }
+  from[n] = stored;
+  return { n, logEvidence, from, share, mean, deviation, y, tilt, variance };
+}
