@@ -12,16 +12,27 @@ export interface ClusterDistanceOptions {
   zeroPointError?: number;
   /** Column with the membership probability. Default: `membershipProbability` where there is one. */
   probability?: string;
+  /** Spread of the members' parallaxes beyond their errors, mas, where it is known. Default: fitted and averaged over. */
+  intrinsicScatter?: number;
+}
+
+/** Parallax, distance and modulus with the errors of chance alone. */
+export interface DistanceByChance {
+  readonly parallax: Measured;
+  readonly distance: Measured;
+  readonly modulus: Measured;
 }
 
 /** Distance of a cluster. */
 export interface ClusterDistance {
-  /** Mean parallax, zero point applied, mas. */
+  /** Mean parallax, zero point applied and its error included, mas. */
   readonly parallax: Measured;
   /** pc */
   readonly distance: Measured;
   /** True distance modulus, mag. */
   readonly modulus: Measured;
+  /** The same three without the error of the zero point: what more stars of the same catalogue would make smaller. */
+  readonly byChance: DistanceByChance;
   /** Spread of the members' parallaxes beyond their errors (depth of the cluster, or errors that are too small), mas. */
   readonly intrinsicScatter: Measured;
   readonly starCount: number;
@@ -39,7 +50,9 @@ const SCATTER_STEPS = 120;
 /**
  * Distance of a cluster from the parallaxes of its members: likelihood of one mean parallax, every star with its own error and a
  * common intrinsic scatter, which is averaged over. Distance and modulus are the exact transforms of the parallax's interval; single
- * stars are never inverted, and no star is left out for a small or negative parallax, so neither biases the mean.
+ * stars are never inverted, and no star is left out for a small or negative parallax, so neither biases the mean. Nor does the depth
+ * of a near cluster: over any distribution that is spherical about a centre, the mean of 1/distance is 1/distance of the centre
+ * (Newton's theorem of the shell).
  * @param members catalogue with parallax and parallax.error; stars count by their membership probability
  * @param options zero point and its error, mas; column of probabilities
  * @returns parallax, distance and modulus with 68 % intervals; distance not determined where the parallax is not positive
@@ -49,15 +62,18 @@ const SCATTER_STEPS = 120;
  */
 export function clusterDistance(members: Catalogue, options: ClusterDistanceOptions = {}): ClusterDistance {
   const caller = 'clusterDistance';
-  checkOptions(caller, options, ['zeroPoint', 'zeroPointError', 'probability']);
-  const { zeroPoint = 0, zeroPointError = 0 } = options;
+  checkOptions(caller, options, ['zeroPoint', 'zeroPointError', 'probability', 'intrinsicScatter']);
+  const { zeroPoint = 0, zeroPointError = 0, intrinsicScatter } = options;
   checkRange(caller, 'zeroPoint', zeroPoint, -10, 10, 'mas');
   checkRange(caller, 'zeroPointError', zeroPointError, 0, 10, 'mas');
+  if (intrinsicScatter !== undefined) checkRange(caller, 'intrinsicScatter', intrinsicScatter, 0, 1000, 'mas');
   const stars = readStars(caller, members, zeroPoint, options.probability);
-  const { parts, scatters, centre } = overScatter(stars);
+  const { parts, scatters, centre } = overScatter(stars, intrinsicScatter);
   const widened = parts.map((p) => ({ ...p, sigma: Math.hypot(p.sigma, zeroPointError) }));
-  const at = (q: number) => gaussianSumQuantile(widened, q);
-  const [value, lower, upper] = [at(0.5), at(0.158655), at(0.841345)];
+  const quantiles = (of: readonly GaussianPart[]) =>
+    [0.5, 0.158655254, 0.841344746].map((q) => gaussianSumQuantile(of, q));
+  const [value, lower, upper] = quantiles(widened);
+  const chance = quantiles(parts);
   const notes: string[] = [];
   if (zeroPoint === 0) notes.push('No parallax zero point was applied.');
   if (stars.dropped > 0) notes.push(`${stars.dropped} stars have no parallax or error and were left out.`);
@@ -72,13 +88,9 @@ export function clusterDistance(members: Catalogue, options: ClusterDistanceOpti
     notes.push(
       `Residuals are larger than errors and scatter allow (mean square ${meanSquare.toFixed(1)}): look for stars that do not belong.`,
     );
-  const far = (parallax: number) => (parallax > 0 ? 1000 / parallax : Number.POSITIVE_INFINITY);
-  const modulusOf = (parallax: number) => 5 * Math.log10(far(parallax)) - 5;
-  const unknown = (unit: string) => measured(Number.NaN, Number.NaN, Number.NaN, unit);
   const result: ClusterDistance = {
-    parallax: measured(value, lower, upper, 'mas'),
-    distance: value > 0 ? measured(far(value), far(upper), far(lower), 'pc') : unknown('pc'),
-    modulus: value > 0 ? measured(modulusOf(value), modulusOf(upper), modulusOf(lower), 'mag') : unknown('mag'),
+    ...transformed(value, lower, upper),
+    byChance: Object.freeze(transformed(value, Math.min(value, chance[1]), Math.max(value, chance[2]))),
     intrinsicScatter: scatters,
     starCount: stars.count,
     zeroPoint,
@@ -87,6 +99,19 @@ export function clusterDistance(members: Catalogue, options: ClusterDistanceOpti
     notes: Object.freeze(notes),
   };
   return show(result);
+}
+
+/** Parallax with its interval, and the distance and modulus that follow; not determined where it is not positive. */
+function transformed(value: number, lower: number, upper: number): DistanceByChance {
+  const far = (parallax: number) => (parallax > 0 ? 1000 / parallax : Number.POSITIVE_INFINITY);
+  const modulus = (parallax: number) => 5 * Math.log10(far(parallax)) - 5;
+  const through = (f: (parallax: number) => number, unit: string) =>
+    value > 0 ? measured(f(value), f(upper), f(lower), unit) : measured(Number.NaN, Number.NaN, Number.NaN, unit);
+  return {
+    parallax: measured(value, lower, upper, 'mas'),
+    distance: through(far, 'pc'),
+    modulus: through(modulus, 'mag'),
+  };
 }
 
 interface ParallaxStars {
@@ -137,7 +162,7 @@ function readStars(caller: string, members: Catalogue, zeroPoint: number, column
 }
 
 /** For each intrinsic scatter the Gaussian of the mean parallax, and how likely that scatter is. */
-function overScatter(stars: ParallaxStars) {
+function overScatter(stars: ParallaxStars, fixed: number | undefined) {
   const { count, parallax, error, weight } = stars;
   let mean = 0;
   let sum = 0;
@@ -150,9 +175,10 @@ function overScatter(stars: ParallaxStars) {
   for (let i = 0; i < count; i++) square += (weight[i] * (parallax[i] - mean) ** 2) / sum;
   const widest = 2 * Math.sqrt(square) + 1e-9;
   const rows: { s: number; at: number; sigma: number; log: number }[] = [];
-  for (let k = 0; k <= SCATTER_STEPS; k++) {
+  const last = fixed === undefined ? SCATTER_STEPS : 0;
+  for (let k = 0; k <= last; k++) {
     // Steps grow with the scatter, so that a small one is resolved as well.
-    const s = widest * (k / SCATTER_STEPS) ** 2;
+    const s = fixed ?? widest * (k / SCATTER_STEPS) ** 2;
     let w = 0;
     let wx = 0;
     for (let i = 0; i < count; i++) {
@@ -203,6 +229,7 @@ function show(d: ClusterDistance): ClusterDistance {
     ['parallax', String(d.parallax)],
     ['distance', String(d.distance)],
     ['distance modulus', String(d.modulus)],
+    ...(d.zeroPointError > 0 ? [['distance modulus, errors of chance alone', String(d.byChance.modulus)]] : []),
     ['scatter of parallaxes beyond errors', String(d.intrinsicScatter)],
   ];
   const title = `Distance from ${d.starCount} stars, zero point ${d.zeroPoint} ± ${d.zeroPointError} mas`;

@@ -36,13 +36,13 @@ export function commonVelocities(stars: Stars, stream: RandomStream, limit: numb
   for (let pair = 0; pair < PAIRS; pair++) {
     const first = stream.below(use.length);
     let middle = stars.values[3 * use[first] + 2];
-    let window = within(stars, use, middle);
-    const j = window[stream.below(window.length)];
+    let peers = within(stars, use, middle);
+    const j = peers[stream.below(peers.length)];
     if (j === use[first]) continue;
     let velocity = solve(stars, Uint32Array.of(use[first], j));
     // Refine on the stars that agree, twice.
     for (let round = 0; round < 2 && velocity !== null; round++) {
-      const near = agreeing(stars, window, velocity, NEAR);
+      const near = agreeing(stars, peers, velocity, NEAR);
       if (near.length < 4) {
         velocity = null;
         break;
@@ -50,11 +50,11 @@ export function commonVelocities(stars: Stars, stream: RandomStream, limit: numb
       velocity = solve(stars, near);
       // In order of parallax, hence the median.
       middle = stars.values[3 * near[near.length >> 1] + 2];
-      window = within(stars, use, middle);
+      peers = within(stars, use, middle);
     }
     if (velocity === null) continue;
-    const inner = agreeing(stars, window, velocity, NEAR);
-    const outer = agreeing(stars, window, velocity, 3 * NEAR);
+    const inner = agreeing(stars, peers, velocity, NEAR);
+    const outer = agreeing(stars, peers, velocity, 3 * NEAR);
     const expected = (outer.length - inner.length) / 8;
     const excess = inner.length - expected;
     const significance = excess / Math.sqrt(expected + 1);

@@ -58,6 +58,58 @@ describe('clusterDistance', () => {
     expect(plain.notes.join()).toMatch(/No parallax zero point/);
   });
 
+  it('keeps the errors of chance apart from those of the zero point', () => {
+    const d = clusterDistance(members(2, 200, 1.3, 0), { zeroPointError: 0.02 });
+    const plain = clusterDistance(members(2, 200, 1.3, 0));
+    expect(d.byChance.modulus.upper - d.byChance.modulus.lower).toBeCloseTo(
+      plain.modulus.upper - plain.modulus.lower,
+      4,
+    );
+    expect(d.modulus.upper - d.modulus.lower).toBeGreaterThan(
+      1.5 * (d.byChance.modulus.upper - d.byChance.modulus.lower),
+    );
+    expect(String(d)).toMatch(/distance modulus, errors of chance alone/);
+    expect(String(plain)).not.toMatch(/errors of chance alone/);
+  });
+
+  it('takes a known scatter as it is', () => {
+    const d = clusterDistance(members(8, 100, 1.3, 0.08), { intrinsicScatter: 0.08 });
+    expect(d.intrinsicScatter.value).toBe(0.08);
+    // The weighted mean with that scatter, by hand.
+    const plx = members(8, 100, 1.3, 0.08).numbers('parallax');
+    const error = members(8, 100, 1.3, 0.08).numbers('parallax.error');
+    const w = error.map((e) => 1 / (e * e + 0.0064));
+    const sum = w.reduce((a, b) => a + b, 0);
+    expect(d.parallax.value).toBeCloseTo(plx.reduce((a, p, i) => a + p * w[i], 0) / sum, 6);
+    expect((d.parallax.upper - d.parallax.lower) / 2).toBeCloseTo(1 / Math.sqrt(sum), 6);
+    expect(() => clusterDistance(members(8, 9, 1, 0), { intrinsicScatter: -1 })).toThrow(
+      /intrinsicScatter must lie in/,
+    );
+  });
+
+  it('is not biased by the depth of a near cluster', () => {
+    // Stars about a centre at 46 pc with 6 pc in each direction: the mean distance is 1.6 % larger than that of the centre, the
+    // inverse of the mean parallax is not.
+    const s = randomStream(12);
+    const n = 60_000;
+    const error = new Float64Array(n).fill(0.5);
+    const values = error.map((e) => {
+      const place = [46, 0, 0].map((x) => x + 6 * s.normal());
+      return 1000 / Math.hypot(...place) + e * s.normal();
+    });
+    const near = new Catalogue({
+      source: 'near',
+      rowCount: n,
+      columns: [
+        { name: 'plx', values },
+        { name: 'e_plx', values: error },
+      ],
+      roles: { parallax: 'plx', 'parallax.error': 'e_plx' },
+    });
+    // 13 % of depth over the root of 60,000 is 0.05 %; three of those.
+    expect(Math.abs(clusterDistance(near).distance.value / 46 - 1)).toBeLessThan(0.0016);
+  });
+
   it('gives stars weight by their probability', () => {
     const base = members(3, 100, 2, 0);
     const bad = members(4, 100, 5, 0);
