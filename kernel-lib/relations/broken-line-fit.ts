@@ -1,4 +1,5 @@
 import { convergence } from '../numeric/convergence';
+import { curvatureShape } from '../numeric/curvature-shape';
 import { sampleEnsemble } from '../numeric/ensemble-sampler';
 import { sampleIndependence } from '../numeric/independence-sampler';
 import { nelderMead } from '../numeric/nelder-mead';
@@ -48,6 +49,8 @@ export interface BrokenLineFit {
 /** Fewest points that may stand on a piece: a slope, a height and a scatter need three, one more tells them apart. */
 const LEAST_ON_PIECE = 4;
 const SMALLEST_SCATTER = 1e-5;
+/** Draws a walker of the short run that finds the shape of the posterior. */
+const PILOT_STEPS = 60;
 /** Steps between kept draws. */
 const THIN = 4;
 
@@ -311,9 +314,17 @@ function sample(
   const starts = new Float64Array(walkers * d);
   const random = stream.fork(1);
   const trial = new Float64Array(d);
+  const peak = curvatureShape(logPosterior, centre, steps);
+  const z = new Float64Array(d);
   for (let w = 0; w < walkers; w++) {
-    for (let spread = 0.3; ; spread *= 0.7) {
-      for (let k = 0; k < d; k++) trial[k] = centre[k] + spread * steps[k] * random.normal();
+    for (let spread = peak === null ? 0.3 : 1; ; spread *= 0.7) {
+      for (let k = 0; k < d; k++) z[k] = spread * random.normal();
+      for (let k = 0; k < d; k++) {
+        let shift = 0;
+        if (peak === null) shift = steps[k] * z[k];
+        else for (let j = 0; j <= k; j++) shift += peak[k * d + j] * z[j];
+        trial[k] = centre[k] + shift;
+      }
       if (Number.isFinite(logPosterior(trial, 0))) break;
       if (spread < 1e-9) trial.set(centre);
     }
@@ -321,20 +332,24 @@ function sample(
   }
   // A short ensemble run finds the shape; independent proposals of that shape then give draws that are nearly independent.
   const pilot = sampleEnsemble(logPosterior, starts, d, stream.fork(2), {
-    warmUp: 400,
-    steps: 150,
-    thin: THIN,
+    // From a spread of the right shape only the tails remain to be found.
+    warmUp: peak === null ? 400 : 80,
+    steps: PILOT_STEPS,
+    thin: 2,
     onProgress,
   });
-  if (pilot.steps < 150) return { samples: pilot.samples, ...worst(pilot.samples, walkers, d) };
-  const refined = sampleIndependence(logPosterior, pilot.samples, d, 16, Math.ceil(draws / 4), stream.fork(3));
-  const quality = worst(refined.samples, 16, d);
-  if (refined.acceptance > 0.15 && quality.effectiveSampleSize > draws / 2) {
-    return { samples: refined.samples, ...quality };
+  if (pilot.steps < PILOT_STEPS) return { samples: pilot.samples, ...worst(pilot.samples, walkers, d) };
+  let shapeFrom = pilot.samples;
+  for (let round = 0, steps = Math.ceil(draws / 8); round < 3; round++, steps *= 2) {
+    const refined = sampleIndependence(logPosterior, shapeFrom, d, 16, steps, stream.fork(10 + round));
+    if (refined.acceptance < 0.15) break;
+    const quality = worst(refined.samples, 16, d);
+    if (quality.effectiveSampleSize > draws / 2) return { samples: refined.samples, ...quality };
+    shapeFrom = refined.samples;
   }
   // The posterior has more than one hump or long arms: let the ensemble go on, twice as long each round.
   let from = pilot.samples.slice((pilot.steps - 1) * walkers * d);
-  for (let round = 0, steps = 500; ; round++, steps *= 2) {
+  for (let round = 0, steps = Math.ceil(draws / 2); ; round++, steps *= 2) {
     const chain = sampleEnsemble(logPosterior, from, d, stream.fork(4 + round), { steps, thin: THIN, onProgress });
     const found = worst(chain.samples, walkers, d);
     if (chain.steps < steps || found.effectiveSampleSize >= draws || round === 4) {

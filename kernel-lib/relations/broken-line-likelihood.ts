@@ -37,14 +37,19 @@ export function brokenLineLikelihood(
             const miss = y[i] - intercepts[k] - a * m;
             // Where the true x lies, given x and y, if the line went on as piece k.
             const centre = m + (a * s * s * miss) / T;
-            const width = s * Math.sqrt(V / T);
-            const below = k === 0 ? Number.NEGATIVE_INFINITY : (breaks[k - 1] - centre) / width;
-            const above = k === last ? Number.POSITIVE_INFINITY : (breaks[k] - centre) / width;
-            if (below > FAR || above < -FAR) continue;
+            const width2 = (s * s * V) / T;
+            const low = k === 0 ? Number.NEGATIVE_INFINITY : breaks[k - 1] - centre;
+            const high = k === last ? Number.POSITIVE_INFINITY : breaks[k] - centre;
+            const far2 = FAR2 * width2;
+            if ((low > 0 && low * low > far2) || (high < 0 && high * high > far2)) continue;
             const exponent = (-0.5 * miss * miss) / T;
             if (exponent > highest) highest = exponent;
-            const inside = below < -FAR && above > FAR ? 1 : normalBetween(below, above);
-            density += (share[t] * inside * Math.exp(exponent - offset)) / Math.sqrt(T);
+            let part = (share[t] * Math.exp(exponent - offset)) / Math.sqrt(T);
+            if (!(low < 0 && low * low > far2 && high > 0 && high * high > far2)) {
+              const width = Math.sqrt(width2);
+              part *= normalBetween(low / width, high / width);
+            }
+            density += part;
           }
         }
         if (density > 1e-280) {
@@ -59,10 +64,10 @@ export function brokenLineLikelihood(
   };
 }
 
-/** Standard deviations beyond which a Gaussian has nothing left in double precision. */
-const FAR = 8.5;
+/** Square of the standard deviations beyond which a Gaussian has nothing left that counts (1e-12). */
+const FAR2 = 49;
 /** Components of the spread of x that hold less of a point than this are left out. */
-const NO_SHARE = 1e-15;
+const NO_SHARE = 1e-12;
 
 /**
  * What does not depend on the line: for each point and each component of the spread of x the share, mean and deviation of the
