@@ -117,6 +117,30 @@ describe('findMembers on simulated fields', () => {
   });
 });
 
+describe('findMembers with very many stars', () => {
+  it('searches on some of them and finishes on all', () => {
+    const field = simulatedField({ seed: 8, stars: 44_000, members: 1000, distance: 900 });
+    const stages: string[] = [];
+    const members = findMembers(field.catalogue, {
+      fieldComponents: 3,
+      onProgress: (done, total, stage = '') => {
+        expect(done).toBeGreaterThanOrEqual(0);
+        expect(done).toBeLessThanOrEqual(total);
+        if (stages.at(-1) !== stage) stages.push(stage);
+      },
+    });
+    expect(stages).toEqual(['field', 'starts', 'fit', 'all stars', 'done']);
+    expect(members.usable).toBe(45_000);
+    expect(Math.abs(members.expectedCount.value - 1000)).toBeLessThan(30);
+    // Every star has its probability, those that the search did without as well.
+    let hits = 0;
+    members.probability.forEach((p, i) => {
+      if (field.member[i] && p > 0.5) hits++;
+    });
+    expect(hits).toBeGreaterThan(930);
+  }, 60_000);
+});
+
 describe('findMembers without a cluster', () => {
   it('says that there is none', () => {
     for (const stars of [60, 300, 1500, 4000]) {
