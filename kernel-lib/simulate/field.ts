@@ -6,7 +6,7 @@ import { RADIANS_PER_DEGREE } from '../quantity/constants';
 import type { RandomStream } from '../quantity/random';
 import { makeMassDrawer } from './initial-masses';
 import { fieldVelocityInto, type SeenMotion, seenMotionInto } from './space-motion';
-import { starLight } from './star-light';
+import { addLight, type StarLight, starLight } from './star-light';
 
 /** One star of the field, as it truly is. */
 export interface FieldStar {
@@ -29,33 +29,68 @@ export interface FieldSetting {
   readonly limitBand: number;
   readonly magnitudeLimit: number;
   readonly rV: number;
-  /** E(B-V) at 1 kpc of the smooth dust layer along this line of sight. */
+  /** E(B-V) of one kpc in the middle of the dust layer along this line of sight. */
   readonly ebvPerKpc: number;
   readonly model: StellarModel;
 }
 
-/** Ages (Gyr) and [Fe/H] of the field's kinds of stars, and how many of each. Our own round figures for the thin disc. */
-const KINDS = [
-  { age: 0.3, metallicity: 0, share: 0.06 },
-  { age: 0.8, metallicity: 0, share: 0.1 },
-  { age: 2, metallicity: 0, share: 0.18 },
-  { age: 4, metallicity: -0.05, share: 0.22 },
-  { age: 6.5, metallicity: -0.15, share: 0.24 },
-  { age: 9.5, metallicity: -0.3, share: 0.2 },
+/** Edges of the age bins of the field, Gyr: stars formed at one rate all along. Our own round figures for the thin disc, as are the next. */
+const AGE_EDGES = [0.05, 0.15, 0.3, 0.5, 0.75, 1, 1.5, 2, 2.75, 3.5, 4.5, 5.5, 6.5, 7.5, 8.5, 9.5, 10.5];
+/** Steps from the mean [Fe/H] of an age, dex, and their shares. */
+const METALLICITY_STEPS = [
+  { step: -0.2, share: 0.25 },
+  { step: 0, share: 0.5 },
+  { step: 0.2, share: 0.25 },
 ];
+/** Older stars are poorer in metals. */
+const meanMetallicity = (age: number) => 0.05 - 0.035 * age;
+const BINARY_FRACTION = 0.35;
+const LEAST_RATIO = 0.1;
+/** Scatter of the logarithm of the dust from star to star: it is patchy. */
+const DUST_SCATTER = 0.2;
+
+interface Kind {
+  readonly age: number;
+  readonly light: StarLight;
+  /** Share of this kind and all before it. */
+  readonly upTo: number;
+}
+
+function makeKinds(model: StellarModel, bands: readonly Band[]): Kind[] {
+  const whole = AGE_EDGES[AGE_EDGES.length - 1] - AGE_EDGES[0];
+  const kinds: Kind[] = [];
+  let upTo = 0;
+  for (let k = 0; k + 1 < AGE_EDGES.length; k++) {
+    const age = 0.5 * (AGE_EDGES[k] + AGE_EDGES[k + 1]);
+    for (const { step, share } of METALLICITY_STEPS) {
+      const [poorest, richest] = model.metallicityRange;
+      const metallicity = Math.min(Math.max(meanMetallicity(age) + step, poorest), richest);
+      upTo += (share * (AGE_EDGES[k + 1] - AGE_EDGES[k])) / whole;
+      const isochrone = model.isochrone({ logAge: 9 + Math.log10(age), metallicity, bands, points: 300 });
+      kinds.push({ age, light: starLight(isochrone, bands), upTo });
+    }
+  }
+  return kinds;
+}
+
+function pickKind(kinds: readonly Kind[], u: number): Kind {
+  let k = 0;
+  while (k < kinds.length - 1 && u >= kinds[k].upTo) k++;
+  return kinds[k];
+}
+
 const DISC_HEIGHT = 300;
 const FARTHEST = 8000;
 
 /**
- * A drawer of field stars: disc stars of several ages, in number with the volume of the cone and the thickness of the disc, reddened by
- * a smooth layer of dust, kept when brighter than the limit.
+ * A drawer of field stars: disc stars of many ages and metallicities, a third of them unresolved binaries, in number with the volume of the
+ * cone and the thickness of the disc, reddened by a patchy layer of dust, kept when brighter than the limit.
  * @returns function that fills a star from a stream
  */
 export function makeFieldDrawer(setting: FieldSetting): (stream: RandomStream, out: FieldStar) => void {
   const { ra, dec, radiusDeg, bands, limitBand, magnitudeLimit, rV, ebvPerKpc, model } = setting;
-  const light = KINDS.map((k) =>
-    starLight(model.isochrone({ logAge: 9 + Math.log10(k.age), metallicity: k.metallicity, bands }), bands),
-  );
+  const kinds = makeKinds(model, bands);
+  const companion = new Float64Array(bands.length);
   const drawMass = makeMassDrawer('kroupa2001', 0.12, 8);
   const coefficients = bands.map((b) => rV * bandExtinction(b, { rV }));
   const { l, b } = galacticOf(ra, dec);
@@ -67,20 +102,26 @@ export function makeFieldDrawer(setting: FieldSetting): (stream: RandomStream, o
 
   return (stream, out) => {
     for (let tries = 0; tries < 1e7; tries++) {
-      const kind = pickKind(stream.uniform());
-      if (!light[kind].magnitudes(drawMass(stream), out.magnitudes)) continue;
+      const { age, light } = pickKind(kinds, stream.uniform());
+      const mass = drawMass(stream);
+      const draw = stream.uniform();
+      if (!light.magnitudes(mass, out.magnitudes)) continue;
+      if (draw < BINARY_FRACTION) {
+        const ratio = LEAST_RATIO + (1 - LEAST_RATIO) * (draw / BINARY_FRACTION);
+        if (light.magnitudes(mass * ratio, companion)) addLight(companion, out.magnitudes);
+      }
       const distance = drawDistance(distances, stream.uniform());
       const modulus = 5 * Math.log10(distance) - 5;
       // Dust thins out with height above the disc.
       const reach = sinB > 1e-3 ? (100 / sinB) * (1 - Math.exp((-distance * sinB) / 100)) : distance;
-      const ebv = (ebvPerKpc * reach) / 1000;
+      const ebv = ((ebvPerKpc * reach) / 1000) * Math.exp(DUST_SCATTER * stream.normal());
       for (let k = 0; k < bands.length; k++) out.magnitudes[k] += modulus + ebv * coefficients[k];
       if (!(out.magnitudes[limitBand] < magnitudeLimit)) continue;
       out.distance = distance;
       out.ebv = ebv;
       out.mass = Number.NaN;
       placeInCone(ra, dec, cosRadius, stream, out);
-      fieldVelocityInto(l, distance, KINDS[kind].age, stream, scratch, velocity);
+      fieldVelocityInto(l, distance, age, stream, scratch, velocity);
       seenMotionInto(velocity, out.ra, out.dec, distance, out.motion);
       return;
     }
@@ -88,15 +129,6 @@ export function makeFieldDrawer(setting: FieldSetting): (stream: RandomStream, o
       `simulateCluster: no field star is brighter than ${magnitudeLimit} mag in ten million tries; raise magnitudeLimit.`,
     );
   };
-}
-
-function pickKind(u: number): number {
-  let sum = 0;
-  for (let k = 0; k < KINDS.length - 1; k++) {
-    sum += KINDS[k].share;
-    if (u < sum) return k;
-  }
-  return KINDS.length - 1;
 }
 
 /** Cumulative number of stars within a distance along a cone, on an even grid. */

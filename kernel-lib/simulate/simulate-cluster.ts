@@ -12,7 +12,7 @@ import { type FieldStar, makeFieldDrawer, offsetInto } from './field';
 import { makeMassDrawer } from './initial-masses';
 import { astrometricErrors, photometricError } from './observing-errors';
 import { type SeenMotion, seenMotionInto, spaceVelocity } from './space-motion';
-import { starLight, whiteDwarfLight } from './star-light';
+import { addLight, starLight, whiteDwarfLight } from './star-light';
 
 /** What a simulated cluster is like. */
 export interface SimulateClusterOptions {
@@ -96,6 +96,21 @@ const OPTIONS: readonly (keyof SimulateClusterOptions)[] = [
   'seed',
 ];
 
+/** Words of the IVOA list of unified content descriptors for where in the spectrum a band lies. */
+const SPECTRAL_RANGE: Readonly<Record<Band, string>> = {
+  U: 'em.opt.U',
+  B: 'em.opt.B',
+  V: 'em.opt.V',
+  Rc: 'em.opt.R',
+  Ic: 'em.opt.I',
+  J: 'em.IR.J',
+  H: 'em.IR.H',
+  Ks: 'em.IR.K',
+  G: 'em.opt',
+  BP: 'em.opt.B',
+  RP: 'em.opt.R',
+  Hp: 'em.opt.V',
+};
 const LEAST_RATIO = 0.1;
 /** Plummer spheres have no edge; stars beyond this many scale radii have long been lost. */
 const EDGE = 8;
@@ -103,9 +118,10 @@ const EDGE = 8;
 /**
  * An invented cluster in a field, as a survey would list it: masses from an initial mass function, unresolved binaries,
  * a Plummer sphere with its depth and internal motion, reddening, errors that grow with magnitude, a faint limit, and disc stars of
- * several ages in front and behind. What is true of each star stands in columns whose names begin with `true_`.
+ * many ages in front and behind. What is true of each star stands in columns whose names begin with `true_`, what is true of the
+ * cluster in the catalogue's `meta.truth`.
  * @returns rows in random order; columns star_id, ra, dec, parallax, pm_ra, pm_dec and magnitudes, each with its error, and
- *   true_member (1 or 0), true_distance, true_mass, true_mass_secondary, true_log_l (NaN for field stars, or for no secondary)
+ *   true_member (1 or 0), true_distance, true_ebv, true_mass, true_mass_secondary, true_log_l (NaN for field stars, or for no secondary)
  * @throws TypeError or RangeError on an option that is unknown or out of range
  * @example simulateCluster({ age: 0.7, distance: 760, ebv: 0.1, members: 400, fieldStars: 8000, seed: 3 })
  * Not included: differential reddening, crowding, variable stars, systematic errors of any kind.
@@ -186,6 +202,7 @@ class Rows {
   readonly pmRa: Float64Array;
   readonly pmDec: Float64Array;
   readonly member: Float64Array;
+  readonly ebv: Float64Array;
   readonly mass: Float64Array;
   readonly secondary: Float64Array;
   readonly logL: Float64Array;
@@ -200,17 +217,25 @@ class Rows {
     this.pmRa = column();
     this.pmDec = column();
     this.member = column();
+    this.ebv = column();
     this.mass = column();
     this.secondary = column();
     this.logL = column();
     this.magnitudes = bands.map(column);
   }
 
-  add(place: { ra: number; dec: number }, distance: number, motion: SeenMotion, magnitudes: Float64Array): number {
+  add(
+    place: { ra: number; dec: number },
+    distance: number,
+    ebv: number,
+    motion: SeenMotion,
+    magnitudes: Float64Array,
+  ): number {
     const i = this.count++;
     this.ra[i] = place.ra;
     this.dec[i] = place.dec;
     this.distance[i] = distance;
+    this.ebv[i] = ebv;
     this.pmRa[i] = motion.properMotionRa;
     this.pmDec[i] = motion.properMotionDec;
     this.member[i] = 0;
@@ -264,11 +289,7 @@ function drawMembers(s: Settled, stream: RandomStream, rows: Rows): void {
       const g = s.massRatioSlope + 1;
       const ratio = (LEAST_RATIO ** g + stream.uniform() * (1 - LEAST_RATIO ** g)) ** (1 / g);
       secondary = mass * ratio;
-      if (light.magnitudes(secondary, companion)) {
-        for (let b = 0; b < bands.length; b++) {
-          magnitudes[b] -= 2.5 * Math.log10(1 + 10 ** (-0.4 * (companion[b] - magnitudes[b])));
-        }
-      }
+      if (light.magnitudes(secondary, companion)) addLight(companion, magnitudes);
     }
     const distance = drawPlace(s, stream, place);
     const modulus = 5 * Math.log10(distance) - 5;
@@ -276,7 +297,7 @@ function drawMembers(s: Settled, stream: RandomStream, rows: Rows): void {
     if (!(magnitudes[s.limitBand] < s.magnitudeLimit)) continue;
     for (let k = 0; k < 3; k++) velocity[k] = systemic[k] + s.velocityDispersion * stream.normal();
     seenMotionInto(velocity, place.ra, place.dec, distance, seen);
-    const i = rows.add(place, distance, seen, magnitudes);
+    const i = rows.add(place, distance, s.ebv, seen, magnitudes);
     rows.member[i] = 1;
     rows.mass[i] = mass;
     rows.secondary[i] = secondary;
@@ -323,7 +344,7 @@ function drawField(s: Settled, stream: RandomStream, rows: Rows): void {
   };
   for (let k = 0; k < s.fieldStars; k++) {
     draw(stream, star);
-    rows.add(star, star.distance, star.motion, star.magnitudes);
+    rows.add(star, star.distance, star.ebv, star.motion, star.magnitudes);
   }
 }
 
@@ -446,12 +467,14 @@ function toCatalogue(s: Settled, order: Uint32Array, rows: Rows, seen: Observed)
   for (let b = 0; b < s.bands.length; b++) {
     const band = s.bands[b];
     const name = `mag_${band.toLowerCase()}`;
-    columns.push({ name, values: take(rows.magnitudes[b]), unit: 'mag', description: `${band} magnitude` });
+    const ucd = `phot.mag;${SPECTRAL_RANGE[band]}`;
+    columns.push({ name, values: take(rows.magnitudes[b]), unit: 'mag', description: `${band} magnitude`, ucd });
     columns.push({
       name: `${name}_error`,
       values: take(seen.magnitudeErrors[b]),
       unit: 'mag',
       description: `standard error of ${name}`,
+      ucd: `stat.error;${ucd}`,
     });
     roles[`magnitude.${band}`] = name;
     roles[`magnitude.${band}.error`] = `${name}_error`;
@@ -459,6 +482,7 @@ function toCatalogue(s: Settled, order: Uint32Array, rows: Rows, seen: Observed)
   const truth: [string, Float64Array, string, string][] = [
     ['true_member', rows.member, '', '1 for a member of the cluster, 0 for a field star'],
     ['true_distance', rows.distance, 'pc', 'distance without error'],
+    ['true_ebv', rows.ebv, 'mag', 'E(B-V) in front of the star'],
     ['true_mass', rows.mass, 'solMass', 'initial mass of the star or primary'],
     ['true_mass_secondary', rows.secondary, 'solMass', 'initial mass of an unresolved companion'],
     ['true_log_l', rows.logL, '', 'log10 of luminosity of the star or primary, solar'],
@@ -473,6 +497,13 @@ function toCatalogue(s: Settled, order: Uint32Array, rows: Rows, seen: Observed)
     rowCount: rows.count,
     columns,
     roles: roles as Roles,
+    meta: { truth: truthOf(s) },
     history: [{ action: what, rowsBefore: 0, rowsAfter: rows.count, note: `model ${s.model.name}` }],
   });
+}
+
+/** The parameters of the cluster, for the catalogue's keywords. */
+function truthOf(s: Settled): Record<string, unknown> {
+  const { model, limitBand, bands, ...rest } = s;
+  return { ...rest, bands: [...bands], model: model.name, distanceModulus: 5 * Math.log10(s.distance) - 5 };
 }

@@ -79,3 +79,10 @@ export function whiteDwarfLight(
   const magnitudes = Float64Array.from(bands, (b) => (found[b] as Float64Array)[0]);
   return magnitudes.every(Number.isFinite) ? { magnitudes, logL, logTeff } : null;
 }
+
+/** Brightens magnitudes by those of a companion that is not resolved. */
+export function addLight(companion: Float64Array, magnitudes: Float64Array): void {
+  for (let b = 0; b < magnitudes.length; b++) {
+    magnitudes[b] -= 2.5 * Math.log10(1 + 10 ** (-0.4 * (companion[b] - magnitudes[b])));
+  }
+}
