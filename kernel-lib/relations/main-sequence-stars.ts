@@ -67,7 +67,7 @@ export function mainSequencePlace(
     { metallicity },
   );
   return Uint8Array.from(logMass, (_, i) => {
-    const error = logRadiusError[i] > 0 ? logRadiusError[i] : 0;
+    const error = Number.isFinite(logRadiusError[i]) ? logRadiusError[i] : 0;
     if (!Number.isFinite(logRadius[i]) || Number.isNaN(least[i])) return PLACE.unknown;
     if (logRadius[i] - error > Math.log10(greatest[i])) return PLACE.larger;
     return logRadius[i] + error < Math.log10(least[i]) ? PLACE.smaller : PLACE.on;
