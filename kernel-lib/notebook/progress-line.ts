@@ -21,7 +21,9 @@ export function progressText(state: ProgressState): string {
   const { title, done, total, elapsed, note, ended } = state;
   const known = Number.isFinite(total) && total > 0;
   const count = (n: number) => n.toLocaleString('en-US', { maximumFractionDigits: 1 });
-  const parts = [known ? `${count(done)} of ${count(total)} (${Math.floor(100 * fraction(state))} %)` : count(done)];
+  const percent = `${Math.floor(100 * fraction(state))} %`;
+  // A total of 1 is a share of the work, not a number of steps.
+  const parts = [!known ? count(done) : total === 1 ? percent : `${count(done)} of ${count(total)} (${percent})`];
   const left = secondsLeft(state);
   if (ended) parts.push(`took ${durationText(elapsed)}`);
   else if (!Number.isNaN(left)) parts.push(`about ${durationText(left)} left`);

@@ -24,7 +24,8 @@ export interface EnsembleOptions {
   /** Scale of the stretch move. Default: 2, as in the paper. */
   stretch?: number;
   /** Called now and then with steps done and in all; return false to stop early. */
-  onProgress?: (done: number, total: number) => boolean | undefined;
+  // biome-ignore lint/suspicious/noConfusingVoidType: a callback that returns nothing is welcome too
+  onProgress?: (done: number, total: number) => boolean | void;
 }
 
 /**

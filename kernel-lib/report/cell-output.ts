@@ -10,6 +10,9 @@ export interface OutputContext {
   readonly html: (html: string) => string;
 }
 
+/** Tags that could send the reader elsewhere or change where addresses lead; no policy of the page stops the first. */
+const LEAVING = /<\/?(?:meta|base)\b[^>]*>/gi;
+
 const PICTURES = ['image/png', 'image/jpeg', 'image/gif', 'image/webp'];
 
 /** One output of a cell as HTML, in the best form that the page can show without help; empty when it shows nothing. */
@@ -19,7 +22,7 @@ export function outputHtml(output: NotebookOutput, context: OutputContext): stri
   const data = output.data ?? {};
   const has = (type: string) => joined(data[type]).trim() !== '';
   if (has('text/html')) {
-    const html = context.html(joined(data['text/html']));
+    const html = context.html(joined(data['text/html'])).replace(LEAVING, '');
     return html.trim() === '' ? '' : `<div class="output">${html}</div>`;
   }
   if (has('image/svg+xml')) {
@@ -43,7 +46,10 @@ export function isError(output: NotebookOutput): boolean {
   if (output.output_type === 'error') return true;
   if (output.output_type !== 'stream' || output.name !== 'stderr') return false;
   const text = joined(output.text);
-  return /^\s+at .*evalmachine/m.test(text) || /^\d+:\d+ - /m.test(text);
+  if (/^\s+at .*evalmachine/m.test(text)) return true;
+  // The compiler's form; a log line may look like it, so all lines must.
+  const lines = text.split('\n').filter((line) => line.trim() !== '');
+  return lines.length > 0 && lines.every((line) => /^(?:\S+ )?\d+:\d+ - /.test(line));
 }
 
 function streamHtml(output: NotebookOutput): string {

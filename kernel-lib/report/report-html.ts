@@ -1,5 +1,5 @@
 import { LOADER_PATTERN } from '../notebook/plotly-loader';
-import { checkOptions } from '../quantity/options';
+import { checkOptions, describe } from '../quantity/options';
 import { escapeHtml } from '../quantity/present';
 import { isError, outputHtml } from './cell-output';
 import { type MarkdownContext, markdownHtml } from './markdown';
@@ -38,11 +38,19 @@ const POLICY =
  * code folded, Plotly once.
  * @param notebook a parsed notebook of format 4
  * @param options  see ReportHtmlOptions
- * @throws TypeError for an unknown option
+ * @throws TypeError for an unknown option, a date that is none, or something that is no notebook
  * @example reportHtml(JSON.parse(text), { title: 'Age of Ostrava 3' })
  */
 export function reportHtml(notebook: NotebookJson, options: ReportHtmlOptions = {}): string {
   checkOptions('reportHtml', options, OPTIONS);
+  if (!Array.isArray(notebook?.cells)) {
+    throw new TypeError(
+      'reportHtml: the first argument must be a notebook of format 4, parsed from its JSON: it has no cells.',
+    );
+  }
+  if (options.when !== undefined && Number.isNaN(Date.parse(options.when))) {
+    throw new TypeError(`reportHtml: when is ${describe(options.when)}; write a date such as "2026-03-01T12:00:00Z".`);
+  }
   const title = options.title ?? titleOf(notebook) ?? 'Report';
   const loaders = new Map<string, string>();
   const contents: Heading[] = [];
