@@ -89,8 +89,8 @@ export function residualError(
   correlation: number,
   scatter: number,
 ): number {
-  const sx = xError > 0 ? xError : 0;
-  const sy = yError > 0 ? yError : 0;
+  const sx = xError || 0;
+  const sy = yError || 0;
   return Math.sqrt(
     Math.max(0, sy * sy + slope * slope * sx * sx - 2 * slope * correlation * sx * sy) + scatter * scatter,
   );

@@ -220,7 +220,7 @@ function excessScatter(
 }
 
 function pointsOf(stars: RelationStars): ErrorPoints {
-  const known = (errors: Float64Array) => errors.map((e) => (e > 0 ? e : 0));
+  const known = (errors: Float64Array) => errors.map((e) => e || 0);
   return {
     x: stars.logMass,
     y: stars.logValue,
