@@ -175,7 +175,7 @@ export function fitMassRelation(
     outliers: outliersOf(stars, residuals),
     leverage: leverageOf(stars, law, residuals, settings.method),
     excluded: Object.freeze(excluded),
-    comparison: compare(all, stars, onSequence, select, law, exponents, settings),
+    comparison: compare(quantity, all, stars, onSequence, select, law, exponents, settings),
     residuals,
     notes: Object.freeze(notes),
   };
@@ -252,6 +252,7 @@ function excludedOf(all: RelationStars, place: Uint8Array): ExcludedStar[] {
 
 /** The same pieces fitted to other choices of stars. */
 function compare(
+  quantity: RelationQuantity,
   all: RelationStars,
   stars: RelationStars,
   onSequence: readonly number[] | null,
@@ -300,6 +301,9 @@ function compare(
       );
     }
   }
+  // A pair's light adds; its radius, measured star by star, does not.
+  if (quantity === 'radius')
+    return Object.freeze({ selected: select, others: Object.freeze(others), bias: Object.freeze(bias) });
   const residual = residualsOf(stars, law).residual;
   const single = rowsWhere(stars.count, (i) => Math.abs(residual[i] - PAIR) > PAIR / 2);
   const pairs = stars.count - single.length;
