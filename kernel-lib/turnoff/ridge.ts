@@ -7,15 +7,25 @@ export interface Ridge {
   readonly stars: Float64Array;
 }
 
-/** Colour over which binaries spread redward of single stars, mag: e-folding scale of the tail. */
-const BINARY_TAIL = 0.06;
+/** An unresolved pair of equals is this much brighter than one of them, mag: 2.5 log10 2. */
+const EQUAL_PAIR = 0.753;
+/** Least range over which binaries lie to the red of single stars, mag: where the sequence is steep. */
+const LEAST_TAIL = 0.03;
 /** Width of the range over which foreign stars spread, mag. */
 const FOREIGN_RANGE = 2;
 const LEAST_WIDTH = 0.004;
+/** Width that a sequence of single stars usually has beyond its errors, mag, and the share of a window's stars that its pull counts as. */
+const USUAL_WIDTH = 0.006;
+const PULL = 0.6;
+/** Places in the order of colours at which the search for the core begins. */
+const STARTS = [0.1, 0.25, 0.4, 0.55, 0.7];
+const ROUNDS = 4;
+/** Errors grow by this as some binaries pass for single stars: measured on invented clusters. */
+const CONFUSION = 1.3;
 
 /**
- * Ridge by windows in magnitude. In each the colours, less the slope of the ridge found before, are a narrow core of single stars, a tail
- * of binaries to the red of it, and a thin spread of foreign stars; the ridge is the centre of the core. Three rounds.
+ * Ridge by windows in magnitude. In each the colours, less the slope of the ridge found before, are a narrow core of single stars, binaries
+ * spread evenly from it to where pairs of equals lie, and a thin spread of foreign stars; the ridge is the centre of the core.
  * @param rows     stars by ascending magnitude
  * @param window   stars a window; neighbours overlap by half
  */
@@ -43,88 +53,121 @@ export function findRidge(
     // Windows are laid from the faint end, so that what is left over falls on the few bright stars.
     const first = n - window - (windows - 1 - w) * step;
     let mean = 0;
-    for (let k = 0; k < window; k++) mean += magnitude[rows[first + k]] / window;
+    for (let k = 0; k < window; k++) {
+      mean += magnitude[rows[first + k]] / window;
+      sorted[k] = colour[rows[first + k]];
+    }
     ridge.magnitude[w] = mean;
+    // A first idea: a little blueward of the median, where half are binaries.
+    ridge.colour[w] = sorted.sort()[Math.floor(0.4 * window)];
   }
-  for (let round = 0; round < 3; round++) {
+  const slopes = new Float64Array(windows);
+  for (let round = 0; round < ROUNDS; round++) {
+    for (let w = 0; w < windows; w++) slopes[w] = slopeAt(ridge, w);
     for (let w = 0; w < windows; w++) {
       const first = n - window - (windows - 1 - w) * step;
-      const slope = round === 0 ? 0 : slopeAt(ridge, w);
       for (let k = 0; k < window; k++) {
         const i = rows[first + k];
-        residual[k] = colour[i] - slope * (magnitude[i] - ridge.magnitude[w]);
+        residual[k] = colour[i] - slopes[w] * (magnitude[i] - ridge.magnitude[w]);
         errors[k] = colourError[i];
       }
-      fitCore(residual, errors, sorted, ridge, w);
+      sorted.set(residual);
+      sorted.sort();
+      const tail = Math.max(LEAST_TAIL, EQUAL_PAIR * slopes[w]);
+      let best: Core | null = null;
+      for (const start of STARTS) {
+        const core = fitCore(residual, errors, sorted[Math.floor(start * window)], tail);
+        if (best === null || core.logLikelihood > best.logLikelihood) best = core;
+      }
+      const { centre, width, stars, error } = best as Core;
+      ridge.colour[w] = centre;
+      ridge.width[w] = width;
+      ridge.stars[w] = stars;
+      ridge.colourError[w] = error;
     }
   }
   return ridge;
 }
 
-/** Slope of the ridge at a window, from its neighbours. */
+/** Slope of the ridge at a window, by a straight line through it and two neighbours on each side. */
 function slopeAt(ridge: Ridge, w: number): number {
-  const last = ridge.magnitude.length - 1;
-  const low = Math.max(0, w - 1);
-  const high = Math.min(last, w + 1);
-  const span = ridge.magnitude[high] - ridge.magnitude[low];
-  return span > 0 ? (ridge.colour[high] - ridge.colour[low]) / span : 0;
+  const low = Math.max(0, w - 2);
+  const high = Math.min(ridge.magnitude.length - 1, w + 2);
+  const count = high - low + 1;
+  let m = 0;
+  let c = 0;
+  for (let k = low; k <= high; k++) {
+    m += ridge.magnitude[k] / count;
+    c += ridge.colour[k] / count;
+  }
+  let top = 0;
+  let bottom = 0;
+  for (let k = low; k <= high; k++) {
+    top += (ridge.magnitude[k] - m) * (ridge.colour[k] - c);
+    bottom += (ridge.magnitude[k] - m) ** 2;
+  }
+  return bottom > 0 ? top / bottom : 0;
 }
 
-/** Centre and width of the core of single stars by expectation-maximisation, from the densest half of the colours. */
-function fitCore(residual: Float64Array, errors: Float64Array, sorted: Float64Array, out: Ridge, w: number): void {
+/** The core of single stars in one window. */
+interface Core {
+  readonly centre: number;
+  readonly width: number;
+  readonly stars: number;
+  readonly error: number;
+  readonly logLikelihood: number;
+}
+
+/** Centre and width of the core by expectation-maximisation. */
+function fitCore(residual: Float64Array, errors: Float64Array, start: number, range: number): Core {
   const n = residual.length;
-  sorted.set(residual);
-  sorted.sort();
-  const half = Math.max(2, Math.ceil(n / 2));
-  let at = 0;
-  for (let i = 0; i + half <= n; i++) {
-    if (sorted[i + half - 1] - sorted[i] < sorted[at + half - 1] - sorted[at]) at = i;
-  }
-  let centre = sorted[at + (half >> 1)];
-  let width = Math.max(LEAST_WIDTH, (sorted[at + half - 1] - sorted[at]) / 1.35);
+  let centre = start;
+  let width = Math.max(LEAST_WIDTH, range / 4);
   let core = 0.6;
-  let tail = 0.3;
-  let inCore = 0;
+  let tail = 0.35;
+  let stars = 0;
   let information = 0;
-  for (let round = 0; round < 60; round++) {
-    let sum0 = 0;
+  let logLikelihood = Number.NEGATIVE_INFINITY;
+  for (let round = 0; round < 80; round++) {
+    let sum = 0;
     let sumTail = 0;
     let weight = 0;
     let weighted = 0;
     let square = 0;
+    let log = 0;
     for (let k = 0; k < n; k++) {
       const v = width * width + errors[k] * errors[k];
+      const s = Math.sqrt(v);
       const d = residual[k] - centre;
       const a = (core * Math.exp((-0.5 * d * d) / v)) / Math.sqrt(2 * Math.PI * v);
-      const s = Math.sqrt(v);
-      const b = tail * tailDensity(d, s);
-      const c = (1 - core - tail) / FOREIGN_RANGE;
-      const share = a / (a + b + c);
-      sum0 += share;
-      sumTail += b / (a + b + c);
+      const b = (tail * (step(d / s) - step((d - range) / s))) / range;
+      const all = a + b + (1 - core - tail) / FOREIGN_RANGE;
+      log += Math.log(all);
+      const share = a / all;
+      sum += share;
+      sumTail += b / all;
       weight += share / v;
       weighted += (share * residual[k]) / v;
       square += share * Math.max(0, d * d - errors[k] * errors[k]);
     }
     const next = weighted / weight;
-    width = Math.max(LEAST_WIDTH, Math.sqrt(square / sum0));
-    core = Math.min(0.98, Math.max(0.2, sum0 / n));
-    tail = Math.min(0.98 - core, Math.max(0.005, sumTail / n));
-    inCore = sum0;
+    // The pull towards a narrow core keeps it from swallowing the binaries beside it.
+    const pull = PULL * n;
+    width = Math.max(LEAST_WIDTH, Math.sqrt((square + pull * USUAL_WIDTH * USUAL_WIDTH) / (sum + pull)));
+    // A core and few foreign stars there always are.
+    core = Math.min(0.97, Math.max(0.25, sum / n));
+    tail = Math.min(0.99 - core, Math.max(0.01, sumTail / n));
+    stars = sum;
     information = weight;
+    logLikelihood = log - pull * (Math.log(width / USUAL_WIDTH) + 0.5 * (USUAL_WIDTH / width) ** 2);
     const moved = Math.abs(next - centre);
     centre = next;
-    if (moved < 1e-6) break;
+    if (moved < 1e-5 && round > 5) break;
   }
-  out.colour[w] = centre;
-  out.width[w] = width;
-  out.stars[w] = inCore;
-  out.colourError[w] = Math.sqrt(1 / information);
+  return { centre, width, stars, error: CONFUSION * Math.sqrt(1 / information), logLikelihood };
 }
 
-/** Exponential tail to the red, blurred by the width of the core (a rough convolution: exact far from the centre). */
-export function tailDensity(d: number, s: number): number {
-  const x = d / BINARY_TAIL;
-  const edge = 1 / (1 + Math.exp((-1.7 * (d - s)) / s));
-  return (edge * Math.exp(-Math.max(x, 0))) / BINARY_TAIL;
+/** A smooth step, close to the cumulative normal distribution. */
+function step(x: number): number {
+  return 1 / (1 + Math.exp(-1.702 * x));
 }

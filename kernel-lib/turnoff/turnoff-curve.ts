@@ -1,5 +1,4 @@
 import { invertPositive } from '../numeric/cholesky';
-import { tailDensity } from './ridge';
 
 /** The sequence about its turnoff as a polynomial: colour as a function of magnitude. */
 export interface TurnoffCurve {
@@ -26,6 +25,8 @@ export interface CurveStars {
 
 const LEAST_WIDTH = 0.003;
 const FOREIGN_RANGE = 2;
+/** Colour over which binaries spread redward of single stars about a turnoff, mag: e-folding scale. */
+const BINARY_TAIL = 0.06;
 const GRID = 240;
 /** Stars of the core above which the curve is not followed. */
 const LEAST_CORE = 2;
@@ -131,4 +132,10 @@ function polynomial(coefficients: Float64Array, t: number): number {
   let value = 0;
   for (let k = coefficients.length - 1; k >= 0; k--) value = value * t + coefficients[k];
   return value;
+}
+
+/** Exponential tail to the red, blurred by the width of the core (a rough convolution: exact far from the centre). */
+function tailDensity(d: number, s: number): number {
+  const edge = 1 / (1 + Math.exp((-1.7 * (d - s)) / s));
+  return (edge * Math.exp(-Math.max(d / BINARY_TAIL, 0))) / BINARY_TAIL;
 }
