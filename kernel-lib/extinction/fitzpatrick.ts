@@ -17,7 +17,7 @@ export const fitzpatrick99: LawFormula = (micron, rV) => {
   let spline = splines.get(rV);
   if (spline === undefined) {
     spline = opticalSpline(rV);
-    // Held for the ratios of one session's work; a sampler over R must not fill the memory.
+    // Held for the ratios of one notebook's work; a sampler over R must not fill the memory.
     if (splines.size > 50) splines.clear();
     splines.set(rV, spline);
   }
