@@ -1,20 +1,19 @@
+import { logSum } from './log-sum';
+import type { Shift } from './metallicity-nodes';
 import { type Comparison, fitPlace, likelihoodAt, type PlaceFit, type PlacePrior, type PlaceStart } from './place-fit';
 import type { Sequence } from './sequence';
 
-/** Log-density over log10 of age, on an even grid about its peak. */
+/** Density over log10 of age, on an even grid about its peak. */
 export interface AgePosterior {
   readonly logAge: readonly number[];
-  /** Not normalised. */
-  readonly logDensity: readonly number[];
-  /** The best age of the grid, at the first maker's side of the middle. */
+  /** Normalised over the grid. */
+  readonly density: readonly number[];
+  /** The best age looked at. */
   readonly best: { readonly logAge: number; readonly fit: PlaceFit; readonly sequence: Sequence };
 }
 
-/** Sequences of one metallicity by age, with the log of its weight. */
-export interface WeighedMaker {
-  readonly log: number;
-  readonly sequenceAt: (logAge: number) => { readonly sequence: Sequence | null };
-}
+/** Sequence of an age, null where there is none. */
+export type SequenceAt = (logAge: number) => { readonly sequence: Sequence | null };
 
 const STEP_COARSE = 0.05;
 /** Ages in a finer grid, and how many times the grids close in on the peak. */
@@ -28,37 +27,33 @@ const HOPELESS = 60;
 const SMOOTH = 4;
 
 /**
- * Posterior of the age, uniform in its logarithm beforehand; reddening, distance and metallicity integrated over.
+ * Posterior of the age, uniform in its logarithm beforehand; reddening and distance integrated over.
  * @returns null when no age gives a main sequence where the stars lie
  */
 export function agePosterior(
   comparison: Comparison,
-  makers: readonly WeighedMaker[],
+  sequenceAt: SequenceAt,
   prior: PlacePrior,
   [low, high]: readonly [number, number],
-  onProgress?: (done: number, total: number) => void,
+  onProgress?: (share: number) => void,
 ): AgePosterior | null {
-  const middle = makers[makers.length >> 1];
   const centre: PlaceStart = { ebv: prior.ebv.value, modulus: prior.modulus.value };
   const known = new Map<number, number>();
-  const fits = makers.map(() => [] as { logAge: number; fit: PlaceFit }[]);
+  const fits: { logAge: number; fit: PlaceFit }[] = [];
   let best: AgePosterior['best'] | null = null;
   const logDensity = (logAge: number): number => {
-    const before = known.get(logAge);
-    if (before !== undefined) return before;
-    const terms: number[] = [];
-    makers.forEach(({ log, sequenceAt }, k) => {
-      const { sequence } = sequenceAt(logAge);
-      if (sequence === null) return;
-      const fit = fitPlace(comparison, sequence, prior, nearestFit(fits[k], logAge) ?? centre);
-      if (!Number.isFinite(fit.logIntegral)) return;
-      fits[k].push({ logAge, fit });
-      terms.push(fit.logIntegral + log);
-      if (makers[k] === middle && (best === null || fit.logIntegral > best.fit.logIntegral)) {
-        best = { logAge, fit, sequence };
+    let value = known.get(logAge);
+    if (value !== undefined) return value;
+    value = Number.NEGATIVE_INFINITY;
+    const { sequence } = sequenceAt(logAge);
+    if (sequence !== null) {
+      const fit = fitPlace(comparison, sequence, prior, nearestFit(fits, logAge) ?? centre);
+      if (Number.isFinite(fit.logIntegral)) {
+        value = fit.logIntegral;
+        fits.push({ logAge, fit });
+        if (best === null || value > best.fit.logIntegral) best = { logAge, fit, sequence };
       }
-    });
-    const value = logSum(terms);
+    }
     known.set(logAge, value);
     return value;
   };
@@ -67,11 +62,11 @@ export function agePosterior(
   const total = logAge.length + FINE_ROUNDS * FINE_AGES;
   let done = 0;
   const tell = (value: number) => {
-    onProgress?.(Math.min(++done, total), total);
+    onProgress?.(Math.min(1, ++done / total));
     return value;
   };
   const first = logAge.map((a) => {
-    const { sequence } = middle.sequenceAt(a);
+    const { sequence } = sequenceAt(a);
     return tell(
       sequence === null ? Number.NEGATIVE_INFINITY : likelihoodAt(comparison, sequence, centre.ebv, centre.modulus),
     );
@@ -85,8 +80,52 @@ export function agePosterior(
     logAge = steps(logAge[from], logAge[to], (logAge[to] - logAge[from]) / (FINE_AGES - 1));
     values = logAge.map((a) => tell(logDensity(a)));
   }
-  onProgress?.(total, total);
-  return best === null ? null : { logAge, logDensity: smoothed(values), best };
+  onProgress?.(1);
+  if (best === null) return null;
+  const smooth = smoothed(values);
+  const whole = logSum(smooth) + Math.log(logAge[1] - logAge[0]);
+  return { logAge, density: smooth.map((v) => Math.exp(v - whole)), best };
+}
+
+/** Points of the grid of a posterior that was spread. */
+const SPREAD = 161;
+
+/** A posterior moved to and fro by shifts of log10 of age, within the range searched. */
+export function spreadPosterior(
+  posterior: AgePosterior,
+  shifts: readonly Shift[],
+  [low, high]: readonly [number, number],
+): AgePosterior {
+  if (shifts.length === 1) return posterior;
+  const moves = shifts.map((s) => s.shift);
+  const first = Math.max(low, posterior.logAge[0] + Math.min(...moves));
+  const last = Math.min(high, posterior.logAge[posterior.logAge.length - 1] + Math.max(...moves));
+  const logAge = steps(first, last, (last - first) / (SPREAD - 1));
+  const density = logAge.map((a) => shifts.reduce((sum, s) => sum + s.weight * densityAt(posterior, a - s.shift), 0));
+  const whole = density.reduce((sum, d) => sum + d, 0) * (logAge[1] - logAge[0]);
+  return { logAge, density: density.map((d) => d / whole), best: posterior.best };
+}
+
+/** log10 of age below which half of a posterior lies. */
+export function medianLogAge({ logAge, density }: AgePosterior): number {
+  const half = 0.5 * density.reduce((sum, d) => sum + d, 0);
+  let sum = 0;
+  for (let k = 0; k < logAge.length; k++) {
+    if (sum + density[k] >= half) {
+      return logAge[k] + ((half - sum) / density[k] - 0.5) * (logAge[1] - logAge[0]);
+    }
+    sum += density[k];
+  }
+  return Number.NaN;
+}
+
+function densityAt({ logAge, density }: AgePosterior, at: number): number {
+  const step = logAge[1] - logAge[0];
+  const place = (at - logAge[0]) / step;
+  const k = Math.floor(place);
+  if (place < -1e-9 || k > logAge.length - 1) return 0;
+  if (k >= logAge.length - 1) return density[logAge.length - 1];
+  return density[Math.max(k, 0)] + (place - Math.max(k, 0)) * (density[Math.max(k, 0) + 1] - density[Math.max(k, 0)]);
 }
 
 /** Values from the start outward on both sides, as far as they matter. */
@@ -159,10 +198,4 @@ function smoothed(values: readonly number[]): number[] {
 function steps(low: number, high: number, step: number): number[] {
   const count = Math.max(2, Math.round((high - low) / step) + 1);
   return Array.from({ length: count }, (_, i) => low + ((high - low) * i) / (count - 1));
-}
-
-function logSum(terms: readonly number[]): number {
-  const top = Math.max(...terms);
-  if (!Number.isFinite(top)) return Number.NEGATIVE_INFINITY;
-  return top + Math.log(terms.reduce((s, t) => s + Math.exp(t - top), 0));
 }

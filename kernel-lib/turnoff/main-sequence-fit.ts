@@ -13,8 +13,8 @@ import {
   sequenceMaker,
   settleCluster,
 } from './cluster-setting';
-import { metallicityNodes } from './metallicity-nodes';
-import { fitPlace, likelihoodAt, makeComparison, type PlaceFit } from './place-fit';
+import { metallicityNodes, metallicityShifts } from './metallicity-nodes';
+import { fitPlace, likelihoodAt, makeComparison, type PlaceFit, type PlaceStart } from './place-fit';
 import { placeStart, thinned } from './place-start';
 import type { Sequence } from './sequence';
 import { meanShares, type Region, readyStars } from './sequence-likelihood';
@@ -25,7 +25,7 @@ export interface MainSequenceFitOptions extends Omit<ClusterOptions, 'distanceMo
   distanceModulus?: ClusterOptions['distanceModulus'];
   /** E(B-V), mag, with or without its error. Default: free. */
   ebv?: number | Measured;
-  /** Standard error of the metallicity, dex: the fit is averaged over it. Default: 0. */
+  /** Standard error of the metallicity, dex: the result is averaged over it, never used to measure it. Default: 0. */
   metallicityError?: number;
   /** Range of E(B-V) searched, mag. Default: -0.1 to 3. */
   range?: readonly [number, number];
@@ -96,7 +96,7 @@ export function mainSequenceFit(members: Catalogue, options: MainSequenceFitOpti
  * @throws Error when bands are missing or fewer than 12 stars have them; TypeError or RangeError on options
  * @example estimateReddening(members, { distanceModulus: clusterDistance(members).modulus })
  * Not included: an error of R_V, and of the assumed metallicity unless given as metallicityError (in B-V, 0.1 dex is worth about
- * 0.02-0.03 mag). The accuracy of the colour scale enters as `systematicError`.
+ * 0.05 mag, as reddening runs almost along the sequence). The accuracy of the colour scale enters as `systematicError`.
  */
 export function estimateReddening(members: Catalogue, options: EstimateReddeningOptions): Measured {
   const caller = 'estimateReddening';
@@ -133,26 +133,25 @@ function fitSequence(caller: string, members: Catalogue, options: MainSequenceFi
   const [youngest, oldest] = setting.model.logAgeRange;
   const ages = (evolved ? CLOSE_LOG_AGES : LOG_AGES).filter((a) => a >= youngest && a <= oldest);
   const nodes = metallicityNodes(setting.model, setting.metallicity, metallicityError);
-  const parts: { fit: PlaceFit; log: number; sequence: Sequence }[] = [];
   const total = nodes.length * ages.length;
   let done = 0;
-  for (const node of nodes) {
-    const sequenceAt = sequenceMaker(setting, node.metallicity);
+  const perNode = nodes.map((metallicity) => {
+    const sequenceAt = sequenceMaker(setting, metallicity);
     const sequences = ages.map((a) => sequenceAt(a).sequence).filter((s): s is Sequence => s !== null);
     const scanned = sequences.filter((_, i) => i % 4 === 1);
-    let start = placeStart(setting, region, scanned, prior, range, modulusRange);
+    let start: PlaceStart = placeStart(setting, region, scanned, prior, range, modulusRange);
+    const here: AgePart[] = [];
     for (const sequence of sequences) {
       const fit = fitPlace(comparison, sequence, prior, start);
       if (Number.isFinite(fit.logIntegral) && Number.isFinite(fit.ebvVariance + fit.modulusVariance)) {
-        parts.push({ fit, log: fit.logIntegral + Math.log(node.weight), sequence });
-        start = parts.reduce((a, b) => (b.log > a.log ? b : a)).fit;
+        here.push({ fit, sequence });
+        start = bestOf(here)?.fit ?? start;
       }
       options.onProgress?.(++done, total);
     }
-  }
-  const top = Math.max(...parts.map((p) => p.log));
-  const good = parts.filter((p) => p.log > top - 20);
-  const best = good.find((p) => p.log === top);
+    return here;
+  });
+  const best = bestOf(perNode[0]);
   const shares = { binary: Number.NaN, foreign: Number.NaN };
   if (best !== undefined) {
     likelihoodAt(comparison, best.sequence, best.fit.ebv, best.fit.modulus);
@@ -163,7 +162,7 @@ function fitSequence(caller: string, members: Catalogue, options: MainSequenceFi
       `About ${Math.round(100 * shares.foreign)} % of the stars fit no sequence: check membership and what was given.`,
     );
   }
-  const weighed = good.map((p) => ({ ...p.fit, share: Math.exp(p.log - top) }));
+  const weighed = withMetallicity(perNode.map(weigh), nodes, metallicityError);
   const edge = best === undefined || best.fit.ebv < range[0] || best.fit.ebv > range[1];
   if (edge) notes.push('The best reddening lies outside the range searched, so it is not determined.');
   const drift = setting.modulus.error > 0 ? slopeOf(weighed) : 0;
@@ -204,7 +203,61 @@ function unevolvedRegion(setting: ClusterSetting): { region: Region; evolved: bo
   return { region: regionOf(setting, evolved ? stars.magnitude[order[0]] - 0.01 : bright, faintest), evolved };
 }
 
-type Weighed = PlaceFit & { share: number };
+interface AgePart {
+  readonly fit: PlaceFit;
+  readonly sequence: Sequence;
+}
+
+function bestOf(parts: readonly AgePart[]): AgePart | undefined {
+  return parts.reduce<AgePart | undefined>(
+    (a, b) => (a === undefined || b.fit.logIntegral > a.fit.logIntegral ? b : a),
+    undefined,
+  );
+}
+
+/** A Gaussian in reddening and distance, and its share. */
+interface Weighed {
+  readonly ebv: number;
+  readonly modulus: number;
+  readonly ebvVariance: number;
+  readonly modulusVariance: number;
+  readonly covariance: number;
+  readonly share: number;
+}
+
+/** The ages that count, each with its share. */
+function weigh(parts: readonly AgePart[]): Weighed[] {
+  const top = bestOf(parts)?.fit.logIntegral ?? 0;
+  return parts
+    .filter((p) => p.fit.logIntegral > top - 20)
+    .map((p) => ({ ...p.fit, share: Math.exp(p.fit.logIntegral - top) }));
+}
+
+/**
+ * The central result, spread as the metallicity wanders. Each metallicity counts as was known beforehand: the bends of a model's
+ * sequence are not trusted to measure it.
+ */
+function withMetallicity(perNode: readonly Weighed[][], nodes: readonly number[], error: number): Weighed[] {
+  const means = perNode.map(moments);
+  const ebv = metallicityShifts(
+    nodes,
+    means.map((m) => m.e),
+    error,
+  );
+  const modulus = metallicityShifts(
+    nodes,
+    means.map((m) => m.m),
+    error,
+  );
+  return perNode[0].flatMap((part) =>
+    ebv.map(({ shift, weight }, j) => ({
+      ...part,
+      ebv: part.ebv + shift,
+      modulus: part.modulus + (modulus[j]?.shift ?? 0),
+      share: part.share * weight,
+    })),
+  );
+}
 
 function moments(parts: readonly Weighed[]) {
   let total = 0;
@@ -225,7 +278,7 @@ function moments(parts: readonly Weighed[]) {
     mm += (p.share / total) * (p.modulusVariance + (p.modulus - m) ** 2);
     em += (p.share / total) * (p.covariance + (p.ebv - e) * (p.modulus - m));
   }
-  return { ee, mm, em };
+  return { e, m, ee, mm, em };
 }
 
 function correlationOf(parts: readonly Weighed[]): number {

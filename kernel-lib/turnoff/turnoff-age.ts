@@ -6,7 +6,7 @@ import type { Band, ColourName } from '../quantity/band';
 import { type Measured, measured, measuredFromSigma } from '../quantity/measured';
 import { checkOptions, checkRange } from '../quantity/options';
 import { escapeHtml, htmlTable, presentable, textTable } from '../quantity/present';
-import { type AgePosterior, agePosterior } from './age-posterior';
+import { type AgePosterior, agePosterior, medianLogAge, spreadPosterior } from './age-posterior';
 import {
   CLUSTER_OPTIONS,
   type ClusterOptions,
@@ -15,7 +15,7 @@ import {
   sequenceMaker,
   settleCluster,
 } from './cluster-setting';
-import { metallicityNodes } from './metallicity-nodes';
+import { metallicityNodes, metallicityShifts } from './metallicity-nodes';
 import { type Comparison, likelihoodAt, makeComparison, type PlaceFit, type PlacePrior } from './place-fit';
 import { thinned } from './place-start';
 import { meanShares, readyStars } from './sequence-likelihood';
@@ -25,7 +25,7 @@ import { turnoffRegion } from './turnoff-region';
 export interface TurnoffAgeOptions extends ClusterOptions {
   /** E(B-V), mag, with or without its error. */
   ebv: number | Measured;
-  /** Standard error of the metallicity, dex: ages are averaged over it. Default: 0. */
+  /** Standard error of the metallicity, dex: ages are averaged over it, never used to measure it. Default: 0. */
   metallicityError?: number;
   /**
    * Magnitude down from which the catalogue would hold every star of the cluster, apparent (absolute with 'parallax'). Default: 4 mag
@@ -119,16 +119,19 @@ export function turnoffAge(members: Catalogue, options: TurnoffAgeOptions): Turn
   checkRange(caller, 'logAgeRange[1]', high, low, most);
 
   const prior = { ebv, modulus };
-  const makers = metallicityNodes(model, setting.metallicity, metallicityError).map((node) => ({
-    log: Math.log(node.weight),
-    sequenceAt: sequenceMaker(setting, node.metallicity),
-  }));
-  const posterior = agePosterior(comparison, makers, prior, [low, high], onProgress);
-  if (posterior === null) {
+  const nodes = metallicityNodes(model, setting.metallicity, metallicityError);
+  const perNode = nodes.map((node, k) => {
+    const tell = (share: number) => onProgress?.((k + share) / nodes.length, 1);
+    return agePosterior(comparison, sequenceMaker(setting, node), prior, [low, high], tell);
+  });
+  const [centre] = perNode;
+  if (centre === null) {
     throw new Error(
       `${caller}: no age between 10^${low} and 10^${high} years gives a main sequence where these stars lie.`,
     );
   }
+  const medians = perNode.map((p) => (p === null ? Number.NaN : medianLogAge(p)));
+  const posterior = spreadPosterior(centre, metallicityShifts(nodes, medians, metallicityError), [low, high]);
   const { sequence, fit } = posterior.best;
   likelihoodAt(comparison, sequence, fit.ebv, fit.modulus);
   const shares = meanShares(comparison.work);
@@ -163,15 +166,15 @@ const show3 = (x: number) => Number(x.toPrecision(3));
 function conclude(
   setting: ClusterSetting,
   comparison: Comparison,
-  { logAge: grid, logDensity }: AgePosterior,
+  { logAge: grid, density: height }: AgePosterior,
   range: readonly [number, number],
   ebv: number,
   shares: { readonly binary: number; readonly foreign: number },
 ): TurnoffAge {
   const { stars, model, metallicity, notes } = setting;
   const n = grid.length;
-  const peak = Math.max(...logDensity);
-  const density = Float64Array.from(logDensity, (v) => Math.exp(v - peak));
+  const peak = Math.max(...height);
+  const density = Float64Array.from(height);
   const cumulative = new Float64Array(n);
   for (let i = 1; i < n; i++)
     cumulative[i] = cumulative[i - 1] + 0.5 * (density[i] + density[i - 1]) * (grid[i] - grid[i - 1]);
@@ -185,8 +188,8 @@ function conclude(
   };
   const [value, lower, upper] = [quantile(0.5), quantile(0.158655), quantile(0.841345)];
   const [far, beyond] = [quantile(0.025), quantile(0.975)];
-  const young = grid[0] <= range[0] + 1e-6 && Math.exp(logDensity[0] - peak) > HIGH_END;
-  const old = grid[n - 1] >= range[1] - 1e-6 && Math.exp(logDensity[n - 1] - peak) > HIGH_END;
+  const young = grid[0] <= range[0] + 1e-6 && height[0] > HIGH_END * peak;
+  const old = grid[n - 1] >= range[1] - 1e-6 && height[n - 1] > HIGH_END * peak;
   const wide = beyond - far > 1;
   const bounded = !young && !old && !wide;
   const limits = {
@@ -197,7 +200,7 @@ function conclude(
     notes.unshift('The stars do not bound the age on either side: the interval is that of the range searched.');
   else if (young)
     notes.unshift(
-      `The stars give an upper limit to the age only: ${limits.young} (95 %). The lower end is that of the range searched.`,
+      `The stars give an upper limit to the age only, as no turnoff shows in them: ${limits.young} (95 %). The lower end is that of the range searched.`,
     );
   else if (old)
     notes.unshift(
