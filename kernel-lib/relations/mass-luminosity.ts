@@ -141,8 +141,20 @@ export function fitMassLuminosity(
   );
 }
 
+/** A relation with its interval at many masses, columns of one length. */
+export interface RelationCurve {
+  readonly x: Float64Array;
+  readonly value: Float64Array;
+  readonly lower: Float64Array;
+  readonly upper: Float64Array;
+}
+
 /** A measured function of mass at equal steps in log mass. */
-export function sampleCurve(points: number, range: readonly [number, number], at: (mass: number) => Measured) {
+export function sampleCurve(
+  points: number,
+  range: readonly [number, number],
+  at: (mass: number) => Measured,
+): RelationCurve {
   if (!(Number.isInteger(points) && points >= 2 && points <= 10000)) {
     throw new RangeError(`curve: points must be a whole number of 2 to 10000, got ${describe(points)}.`);
   }

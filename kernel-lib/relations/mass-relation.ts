@@ -86,7 +86,7 @@ export interface MassRelationFit {
   readonly constants: readonly Measured[];
   /** Intrinsic scatter in the quantity, dex. */
   readonly scatter: Measured;
-  /** Score of each number of breaks that was tried; smaller is better. */
+  /** Score of each number of breaks that was tried, by the likelihood of the method `posterior`; smaller is better. Empty where a simpler method was told its breaks. */
   readonly bic: readonly BreakScore[];
   readonly starCount: number;
   /** Solar masses of the fitted stars. */

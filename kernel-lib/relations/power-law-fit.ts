@@ -1,4 +1,5 @@
 import type { ErrorPoints } from '../numeric/regression/york';
+import { yorkResampler } from '../numeric/regression/york-resampler';
 import { type RandomStream, randomStream } from '../quantity/random';
 import { type BrokenLine, pieceAt } from './broken-line';
 import { type BrokenLineFit, fitBrokenLine } from './broken-line-fit';
@@ -70,7 +71,7 @@ export function fitPowerLaw(stars: RelationStars, settings: PowerLawSettings): P
     settings.method === 'posterior'
       ? fromPosterior(points, breaks, continuous, settings)
       : fromResampling(points, breaks, settings, settings.method);
-  if (bic.length === 0) bic.push(found.score);
+  if (bic.length === 0 && found.score !== null) bic.push(found.score);
   const none = found.best.breaks.length === 0;
   const origin = none ? 'none' : fixed ? 'given' : settings.method === 'posterior' ? 'drawn' : 'held';
   return { ...found, bic, breakOrigin: origin };
@@ -106,9 +107,11 @@ function fromResampling(
   settings: PowerLawSettings,
   method: Exclude<RelationMethod, 'posterior'>,
 ) {
-  // The likelihood says where the breaks are; each piece then gets its own line.
-  const placed = fitBrokenLine(points, { breaks, continuous: false, draws: 0 });
-  const at = placed.best.breaks;
+  // The likelihood says where free breaks are; each piece then gets its own line.
+  const free = typeof breaks === 'number' && breaks > 0;
+  const at = free
+    ? fitBrokenLine(points, { breaks, continuous: false, draws: 0 }).best.breaks
+    : Float64Array.from(typeof breaks === 'number' ? [] : breaks);
   const n = points.x.length;
   const pieces = at.length + 1;
   const rowsOf = Array.from({ length: pieces }, (_, k) =>
@@ -135,8 +138,7 @@ function fromResampling(
     ...(pieces > 1 ? ['pieces fitted one by one: they need not join at the breaks'] : []),
     ...resampled.notes,
   ];
-  const score = Object.freeze({ breaks: at.length, bic: placed.bic, parameterCount: placed.parameterCount });
-  return { best, bestScatter, draws: resampled.draws, notes, score };
+  return { best, bestScatter, draws: resampled.draws, notes, score: null };
 }
 
 function resample(
@@ -162,21 +164,35 @@ function resample(
   }
   let count = 0;
   let failed = 0;
+  const york = method === 'errors-in-both-axes' ? yorkResampler(points) : null;
+  const drawn = rowsOf.map((rows) => new Uint32Array(rows.length));
+  const total = rowsOf.reduce((sum, rows) => sum + rows.length, 0);
+  const out = new Float64Array(4);
   for (let t = 0; t < resamples; t++) {
     const random = stream.fork(t);
-    const drawn = rowsOf.map((rows) => drawRows(rows, random));
     let good = true;
+    let square = 0;
     for (let k = 0; k < pieces && good; k++) {
-      const line = lineThrough(method, points, drawn[k]);
-      if (line === null || !Number.isFinite(line.slope)) good = false;
-      else [slope[k], intercept[k]] = [line.slope, line.intercept];
+      drawRows(rowsOf[k], random, drawn[k]);
+      if (york !== null) {
+        good = york.fit(drawn[k], best.slopes[k], out);
+        [slope[k], intercept[k]] = [out[0], out[1]];
+        // Two degrees of freedom went into the line of each piece.
+        const m = drawn[k].length;
+        square += (out[2] * m * m) / (m - 2) - out[3] * m;
+      } else {
+        const line = lineThrough(method, points, drawn[k]);
+        if (line === null || !Number.isFinite(line.slope)) good = false;
+        else [slope[k], intercept[k]] = [line.slope, line.intercept];
+      }
     }
     if (!good) {
       failed++;
       continue;
     }
     for (let k = 0; k < pieces; k++) [slopes[k][count], intercepts[k][count]] = [slope[k], intercept[k]];
-    scatter[count++] = excessScatter(points, drawn, slope, intercept);
+    scatter[count++] =
+      york === null ? excessScatter(points, drawn, slope, intercept) : Math.sqrt(Math.max(0, square / total));
     if (onProgress && t % 50 === 49 && onProgress(t + 1, resamples) === false) break;
   }
   const cut = (values: Float64Array) => values.slice(0, count);
@@ -190,10 +206,9 @@ function resample(
   return { draws, notes: failed > 0 ? [`${failed} resamples gave no line and were left out`] : [] };
 }
 
-function drawRows(rows: Uint32Array, random: RandomStream): Uint32Array {
-  const out = new Uint32Array(rows.length);
-  for (let i = 0; i < out.length; i++) out[i] = rows[random.below(rows.length)];
-  return out;
+function drawRows(rows: Uint32Array, random: RandomStream, out: Uint32Array): void {
+  const share = rows.length / 4294967296;
+  for (let i = 0; i < out.length; i++) out[i] = rows[Math.floor(random.bits() * share)];
 }
 
 /** Scatter about the pieces beyond the errors, by moments, dex; 0 where the errors explain everything. */
