@@ -27,12 +27,13 @@ export function yorkResampler(points: ErrorPoints): YorkResampler {
     centreX += points.x[i] / n;
     centreY += points.y[i] / n;
   }
-  const all = new Float64Array(5 * n);
+  const all = new Float64Array(6 * n);
+  let weighedAt = Number.NaN;
   for (let i = 0; i < n; i++) {
     const [sx, sy] = [points.xError[i], points.yError[i]];
     all.set(
       [points.x[i] - centreX, points.y[i] - centreY, sx * sx, sy * sy, (points.correlation?.[i] ?? 0) * sx * sy],
-      5 * i,
+      6 * i,
     );
   }
   let size = n;
@@ -49,7 +50,16 @@ export function yorkResampler(points: ErrorPoints): YorkResampler {
       [x, y, xx, yy, xy, w] = Array.from({ length: 6 }, () => new Float64Array(m));
       size = m;
     }
+    if (start !== weighedAt) {
+      for (let at = 0; at < all.length; at += 6) {
+        all[at + 5] = 1 / (all[at + 3] + start * start * all[at + 2] - 2 * start * all[at + 4]);
+      }
+      weighedAt = start;
+    }
     // Plain moments give the mean squared residual of any line without another pass.
+    let sum = 0;
+    let meanX = 0;
+    let meanY = 0;
     let sx = 0;
     let sy = 0;
     let sxx = 0;
@@ -59,17 +69,22 @@ export function yorkResampler(points: ErrorPoints): YorkResampler {
     let errorXY = 0;
     let errorYY = 0;
     for (let k = 0; k < m; k++) {
-      const at = 5 * rows[k];
+      const at = 6 * rows[k];
       const px = all[at];
       const py = all[at + 1];
       const vx = all[at + 2];
       const vy = all[at + 3];
       const vxy = all[at + 4];
+      const weight = all[at + 5];
       x[k] = px;
       y[k] = py;
       xx[k] = vx;
       yy[k] = vy;
       xy[k] = vxy;
+      w[k] = weight;
+      sum += weight;
+      meanX += weight * px;
+      meanY += weight * py;
       sx += px;
       sy += py;
       sxx += px * px;
@@ -80,22 +95,22 @@ export function yorkResampler(points: ErrorPoints): YorkResampler {
       errorYY += vy;
     }
     let b = start;
-    let meanX = 0;
-    let meanY = 0;
     let settled = false;
-    let before = Number.POSITIVE_INFINITY;
+    let before = Number.NaN;
     for (let round = 0; round < 200 && !settled; round++) {
-      let sum = 0;
-      meanX = 0;
-      meanY = 0;
-      const bb = b * b;
-      const b2 = 2 * b;
-      for (let k = 0; k < m; k++) {
-        const weight = 1 / (yy[k] + bb * xx[k] - b2 * xy[k]);
-        w[k] = weight;
-        sum += weight;
-        meanX += weight * x[k];
-        meanY += weight * y[k];
+      if (round > 0) {
+        sum = 0;
+        meanX = 0;
+        meanY = 0;
+        const bb = b * b;
+        const b2 = 2 * b;
+        for (let k = 0; k < m; k++) {
+          const weight = 1 / (yy[k] + bb * xx[k] - b2 * xy[k]);
+          w[k] = weight;
+          sum += weight;
+          meanX += weight * x[k];
+          meanY += weight * y[k];
+        }
       }
       meanX /= sum;
       meanY /= sum;
@@ -135,4 +150,4 @@ export function yorkResampler(points: ErrorPoints): YorkResampler {
 
 /** Steps of the slope: so small that nothing follows, and so small that the geometric series of the steps ends the search. */
 const SETTLED = 1e-12;
-const NEARLY = 1e-6;
+const NEARLY = 1e-7;
