@@ -127,7 +127,7 @@ export function colourMagnitudeDiagram(catalogue: Catalogue, options: ColourMagn
   if (options.modulus !== undefined) {
     layout['yaxis2'] = absoluteAxis(band, ranges.magnitude, apparentShift(options, band));
     // Clear of the labels of the second axis.
-    layout['legend'] = { ...(layout['legend'] as object), x: 1.12 };
+    layout['legend'] = { ...(layout['legend'] as object), x: 1.09 };
     data.push(axisKeeper('x', 'y2'));
   }
   return new Figure(drawnAlike(data), layout, title);

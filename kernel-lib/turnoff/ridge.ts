@@ -66,18 +66,23 @@ export function findRidge(
     for (let w = 0; w < windows; w++) slopes[w] = slopeAt(ridge, w);
     for (let w = 0; w < windows; w++) {
       const first = n - window - (windows - 1 - w) * step;
-      for (let k = 0; k < window; k++) {
-        const i = rows[first + k];
-        residual[k] = colour[i] - slopes[w] * (magnitude[i] - ridge.magnitude[w]);
-        errors[k] = colourError[i];
-      }
-      sorted.set(residual);
-      sorted.sort();
-      const tail = Math.max(LEAST_TAIL, EQUAL_PAIR * slopes[w]);
+      // The brightest windows have no neighbours beyond, and the hook bends back there: their own stars may know the slope better.
+      const inside = w < 2 && windows > 2 ? slopeInside(colour, magnitude, rows, first, window) : Number.NaN;
       let best: Core | null = null;
-      for (const start of STARTS) {
-        const core = fitCore(residual, errors, sorted[Math.floor(start * window)], tail);
-        if (best === null || core.logLikelihood > best.logLikelihood) best = core;
+      for (const slope of [slopes[w], inside]) {
+        if (Number.isNaN(slope)) continue;
+        for (let k = 0; k < window; k++) {
+          const i = rows[first + k];
+          residual[k] = colour[i] - slope * (magnitude[i] - ridge.magnitude[w]);
+          errors[k] = colourError[i];
+        }
+        sorted.set(residual);
+        sorted.sort();
+        const tail = Math.max(LEAST_TAIL, EQUAL_PAIR * slope);
+        for (const start of STARTS) {
+          const core = fitCore(residual, errors, sorted[Math.floor(start * window)], tail);
+          if (best === null || core.logLikelihood > best.logLikelihood) best = core;
+        }
       }
       const { centre, width, stars, error } = best as Core;
       ridge.colour[w] = centre;
@@ -107,6 +112,25 @@ function slopeAt(ridge: Ridge, w: number): number {
     bottom += (ridge.magnitude[k] - m) ** 2;
   }
   return bottom > 0 ? top / bottom : 0;
+}
+
+/** Median slope of pairs of stars of a window that lie apart in magnitude; NaN when too few do. */
+function slopeInside(
+  colour: ArrayLike<number>,
+  magnitude: ArrayLike<number>,
+  rows: Uint32Array,
+  first: number,
+  window: number,
+): number {
+  const slopes: number[] = [];
+  for (let k = 0; k < window; k++) {
+    for (let j = k + 1; j < window; j++) {
+      const dm = magnitude[rows[first + j]] - magnitude[rows[first + k]];
+      if (dm > 0.05) slopes.push((colour[rows[first + j]] - colour[rows[first + k]]) / dm);
+    }
+  }
+  if (slopes.length < window) return Number.NaN;
+  return Float64Array.from(slopes).sort()[slopes.length >> 1];
 }
 
 /** The core of single stars in one window. */
