@@ -142,3 +142,61 @@ export { type EstimateReddeningOptions, estimateReddening } from './turnoff/main
 export { type RidgeLine, type RidgeLineOptions, ridgeLine } from './turnoff/ridge-line';
 export { type TurnoffAge, type TurnoffAgeOptions, turnoffAge } from './turnoff/turnoff-age';
 export { type TurnoffPoint, type TurnoffPointOptions, turnoffPoint } from './turnoff/turnoff-point';
+// relations: fits, radii, states and remnants
+export { type AgeClusterOptions, type AgedCluster, ageCluster } from './relations/age-cluster';
+export {
+  angularDiameter,
+  SURFACE_BRIGHTNESS,
+  type SurfaceBrightnessName,
+  type SurfaceBrightnessRelation,
+} from './relations/angular-diameter';
+export {
+  type EvolutionaryState,
+  type EvolutionaryStateOptions,
+  evolutionaryState,
+} from './relations/evolutionary-state';
+export {
+  type InferRadiiOptions,
+  inferRadii,
+  type MeasuredColumn,
+  type RadiusAgreement,
+  type RadiusInference,
+  type RadiusWay,
+} from './relations/infer-radii';
+export type { RelationMethod } from './relations/line-methods';
+export { type MainSequenceRadii, mainSequenceRadii } from './relations/main-sequence-stars';
+export {
+  fitMassLuminosity,
+  type MassLuminosityFit,
+  type MassLuminosityFitCurve,
+  type MassLuminosityOptions,
+  type RelationLifetime,
+} from './relations/mass-luminosity';
+export { fitMassRadius, type MassRadiusFit, type MassRadiusOptions } from './relations/mass-radius';
+export type {
+  ExcludedStar,
+  MassRelationFit,
+  MassRelationOptions,
+  OtherSelection,
+  SelectionComparison,
+} from './relations/mass-relation';
+export {
+  type ClumpCheck,
+  type Oddities,
+  type OdditiesOptions,
+  type Oddity,
+  type OddityKind,
+  oddities,
+} from './relations/oddities';
+export type { BreakScore } from './relations/power-law-fit';
+export {
+  MASS_LUMINOSITY_RELATIONS,
+  type MassLuminosityName,
+  type MassRadiusName,
+  type PublishedRelation,
+  publishedLuminosity,
+  publishedRadius,
+} from './relations/published-relations';
+export type { LeverageStar, Outlier, RelationResiduals } from './relations/relation-result';
+export type { RelationColumns, RelationQuantity, StarsOfKnownMass } from './relations/relation-stars';
+export { type WhiteDwarfCheck, type WhiteDwarfCheckOptions, whiteDwarfCheck } from './relations/white-dwarf-check';
