@@ -120,29 +120,6 @@ export {
 } from './quantity/measured';
 export { convertUnits } from './quantity/units';
 // relations
-export { lifetimeFromMass } from './relations/lifetime';
-// report
-export { type ClusterSummary, type ClusterSummaryParts, clusterSummary } from './report/cluster-summary';
-export { type ExportReportOptions, exportReport, type WrittenReport } from './report/export-report';
-export { type ReportHtmlOptions, reportHtml } from './report/report-html';
-// simulate
-export { type SimulateClusterOptions, simulateCluster } from './simulate/simulate-cluster';
-// stars
-export {
-  type EvolutionaryGroup,
-  type EvolutionaryGroupOptions,
-  evolutionaryGroup,
-  evolutionaryGroups,
-} from './stars/evolutionary-group';
-export { type PhysicalPropertiesOptions, physicalProperties } from './stars/physical-properties';
-export { wienPeak } from './stars/wien-peak';
-// turnoff
-export type { ClusterOptions } from './turnoff/cluster-setting';
-export { type EstimateReddeningOptions, estimateReddening } from './turnoff/main-sequence-fit';
-export { type RidgeLine, type RidgeLineOptions, ridgeLine } from './turnoff/ridge-line';
-export { type TurnoffAge, type TurnoffAgeOptions, turnoffAge } from './turnoff/turnoff-age';
-export { type TurnoffPoint, type TurnoffPointOptions, turnoffPoint } from './turnoff/turnoff-point';
-// relations: fits, radii, states and remnants
 export { type AgeClusterOptions, type AgedCluster, ageCluster } from './relations/age-cluster';
 export {
   angularDiameter,
@@ -163,6 +140,7 @@ export {
   type RadiusInference,
   type RadiusWay,
 } from './relations/infer-radii';
+export { lifetimeFromMass } from './relations/lifetime';
 export type { RelationMethod } from './relations/line-methods';
 export { type MainSequenceRadii, mainSequenceRadii } from './relations/main-sequence-stars';
 export {
@@ -200,3 +178,24 @@ export {
 export type { LeverageStar, Outlier, RelationResiduals } from './relations/relation-result';
 export type { RelationColumns, RelationQuantity, StarsOfKnownMass } from './relations/relation-stars';
 export { type WhiteDwarfCheck, type WhiteDwarfCheckOptions, whiteDwarfCheck } from './relations/white-dwarf-check';
+// report
+export { type ClusterSummary, type ClusterSummaryParts, clusterSummary } from './report/cluster-summary';
+export { type ExportReportOptions, exportReport, type WrittenReport } from './report/export-report';
+export { type ReportHtmlOptions, reportHtml } from './report/report-html';
+// simulate
+export { type SimulateClusterOptions, simulateCluster } from './simulate/simulate-cluster';
+// stars
+export {
+  type EvolutionaryGroup,
+  type EvolutionaryGroupOptions,
+  evolutionaryGroup,
+  evolutionaryGroups,
+} from './stars/evolutionary-group';
+export { type PhysicalPropertiesOptions, physicalProperties } from './stars/physical-properties';
+export { wienPeak } from './stars/wien-peak';
+// turnoff
+export type { ClusterOptions } from './turnoff/cluster-setting';
+export { type EstimateReddeningOptions, estimateReddening } from './turnoff/main-sequence-fit';
+export { type RidgeLine, type RidgeLineOptions, ridgeLine } from './turnoff/ridge-line';
+export { type TurnoffAge, type TurnoffAgeOptions, turnoffAge } from './turnoff/turnoff-age';
+export { type TurnoffPoint, type TurnoffPointOptions, turnoffPoint } from './turnoff/turnoff-point';
