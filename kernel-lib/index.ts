@@ -90,7 +90,7 @@ export { type ZeroAgeStar, type ZeroAgeStars, zeroAge } from './models/zero-age'
 export { show } from './notebook/display';
 // notebook
 export { breathe, interruptible } from './notebook/interruptible';
-export { type Progress, type ProgressOptions, progress } from './notebook/progress';
+export { type OnProgress, type Progress, type ProgressOptions, progress } from './notebook/progress';
 export { type AbsoluteMagnitudesOptions, absoluteMagnitudes } from './photometry/absolute-magnitudes';
 // photometry
 export { BANDS, type BandDescription } from './photometry/bands';
@@ -195,7 +195,14 @@ export { type PhysicalPropertiesOptions, physicalProperties } from './stars/phys
 export { wienPeak } from './stars/wien-peak';
 // turnoff
 export type { ClusterOptions } from './turnoff/cluster-setting';
-export { type EstimateReddeningOptions, estimateReddening } from './turnoff/main-sequence-fit';
+export type { DiagramChoice } from './turnoff/diagram-stars';
+export {
+  type EstimateReddeningOptions,
+  estimateReddening,
+  type MainSequenceFit,
+  type MainSequenceFitOptions,
+  mainSequenceFit,
+} from './turnoff/main-sequence-fit';
 export { type RidgeLine, type RidgeLineOptions, ridgeLine } from './turnoff/ridge-line';
 export { type TurnoffAge, type TurnoffAgeOptions, turnoffAge } from './turnoff/turnoff-age';
 export { type TurnoffPoint, type TurnoffPointOptions, turnoffPoint } from './turnoff/turnoff-point';
