@@ -1,11 +1,11 @@
 /**
  * Rotation from equatorial (ICRS) to Galactic axes, row by row.
- * Source: The Hipparcos and Tycho Catalogues, ESA SP-1200 (1997), Vol. 1, Eq. 1.5.11 (from memory; agrees with the pole at
- * 192.85948, 27.12825 deg and the node at 32.93192 deg given there).
+ * Source: The Hipparcos and Tycho Catalogues, ESA SP-1200 (1997), Vol. 1, Eq. 1.5.11 (from memory): the pole at
+ * 192.85948, 27.12825 deg and the node at 32.93192 deg given there, carried to the last digit of a double.
  */
 export const EQUATORIAL_TO_GALACTIC: readonly number[] = [
-  -0.0548755604, -0.8734370902, -0.4838350155, 0.4941094279, -0.44482963, 0.7469822445, -0.867666149, -0.1980763734,
-  0.4559837762,
+  -0.05487556041621537, -0.873437090234885, -0.4838350155487132, 0.4941094278755837, -0.4448296299600112,
+  0.746982244497219, -0.8676661490190047, -0.1980763734312015, 0.4559837761750669,
 ];
 
 /** Unit vector towards a place on the sky. @param out shape (3) */
@@ -26,7 +26,17 @@ export function galacticOf(raDeg: number, decDeg: number): { l: number; b: numbe
   const y = m[3] * v[0] + m[4] * v[1] + m[5] * v[2];
   const z = m[6] * v[0] + m[7] * v[1] + m[8] * v[2];
   const l = (Math.atan2(y, x) * 180) / Math.PI;
-  return { l: l < 0 ? l + 360 : l, b: (Math.asin(z) * 180) / Math.PI };
+  return { l: l < 0 ? l + 360 : l, b: (Math.atan2(z, Math.hypot(x, y)) * 180) / Math.PI };
+}
+
+/** Equatorial (ICRS) place of a Galactic one, deg; right ascension 0 to 360. */
+export function equatorialOf(lDeg: number, bDeg: number): { ra: number; dec: number } {
+  const v = new Float64Array(3);
+  const e = new Float64Array(3);
+  directionInto(lDeg, bDeg, v);
+  galacticToEquatorialInto(v, e);
+  const ra = (Math.atan2(e[1], e[0]) * 180) / Math.PI;
+  return { ra: ra < 0 ? ra + 360 : ra, dec: (Math.atan2(e[2], Math.hypot(e[0], e[1])) * 180) / Math.PI };
 }
 
 /** A Galactic vector in equatorial axes. @param out shape (3), not the input */
