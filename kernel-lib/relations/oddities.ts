@@ -36,8 +36,10 @@ export interface OdditiesOptions {
   readonly age: number | Measured;
   /** [Fe/H], dex. Default: 0. */
   readonly metallicity?: number;
-  /** Stars of a smaller probability are not listed, 0 to 1. Default: 0.1. */
+  /** Stars of a smaller probability are not listed, 0 to 1. Default: 0.3. */
   readonly leastProbability?: number;
+  /** Share of main-sequence stars that are pairs of nearly equal stars, before looking, 0 to 1. Default: 0.1. */
+  readonly pairFraction?: number;
   /** Draws within the errors, 20 to 10,000. Default: 200. */
   readonly samples?: number;
   /** Default: 1. */
@@ -75,8 +77,10 @@ const KINDS: readonly OddityKind[] = [
 ];
 /** A straggler is hotter than the hottest point of the isochrone by this, dex. */
 const BLUER = 0.015;
-/** Least and greatest height of a pair over the single-star sequence, dex: equal stars lie log10(2) = 0.30 above. */
-const PAIR_BAND: readonly [number, number] = [0.22, 0.38];
+/** Height of two equal stars over the single-star sequence, dex. */
+const PAIR = Math.log10(2);
+/** Spread of either about its line beyond the errors, dex: unequal masses, rotation, models. */
+const PAIR_SPREAD = 0.05;
 /** Pairs are told from single stars only this far below the turnoff, dex in log L. */
 const BELOW_TURNOFF = 0.15;
 /** Accuracy of the model's clump luminosity, mag. Common practice, no source. */
@@ -87,11 +91,11 @@ const CLUMP_ACCURACY = 0.1;
  * giants, giants and supergiants, each with reason and probability, and the clump as a check of the distance.
  *
  * Rules: white dwarf: radius below 0.05 solar. Blue straggler: in the main-sequence band, hotter by 0.015 dex than the hottest point of the
- * isochrone and brighter than 0.1 dex below the turnoff. Equal-mass binary: 0.22 to 0.38 dex above the isochrone at its temperature,
- * below the turnoff. Red clump: a giant within 0.03 dex in temperature and 0.2 dex in luminosity of the model's core-helium-burning
+ * isochrone and brighter than 0.1 dex below the turnoff. Equal-mass binary, below the turnoff: height over the isochrone at its
+ * temperature, weighed between 0.30 dex (two equal stars) and 0 (a single star), with pairFraction as the prior. Red clump: a giant within 0.03 dex in temperature and 0.2 dex in luminosity of the model's core-helium-burning
  * giants. Giants and supergiants: see evolutionaryGroup.
  * @param catalogue with log_teff and log_l (physicalProperties), membershipProbability if known
- * @param options age (Gyr), metallicity, leastProbability, samples, seed
+ * @param options age (Gyr), metallicity, leastProbability, pairFraction, samples, seed
  * @returns frozen lists, the likeliest first
  * @throws TypeError on an unknown option; RangeError on values out of range; Error without the columns
  * @example oddities(stars, { age: 0.7 }).blueStragglers
@@ -99,10 +103,11 @@ const CLUMP_ACCURACY = 0.1;
  */
 export function oddities(catalogue: Catalogue, options: OdditiesOptions): Oddities {
   const caller = 'oddities';
-  checkOptions(caller, options, ['age', 'metallicity', 'leastProbability', 'samples', 'seed']);
-  const { metallicity = 0, leastProbability = 0.1, samples = 200, seed = 1 } = options ?? {};
+  checkOptions(caller, options, ['age', 'metallicity', 'leastProbability', 'pairFraction', 'samples', 'seed']);
+  const { metallicity = 0, leastProbability = 0.3, pairFraction = 0.1, samples = 200, seed = 1 } = options ?? {};
   const age = ageOf(caller, options?.age).value;
   checkRange(caller, 'leastProbability', leastProbability, 0, 1);
+  checkRange(caller, 'pairFraction', pairFraction, 0, 1);
   checkRange(caller, 'samples', samples, 20, 10000);
   const { logTeff, logL } = hrColumns(caller, catalogue);
   const errors = (name: string) => (catalogue.has(name) ? catalogue.numbers(name) : null);
@@ -123,8 +128,12 @@ export function oddities(catalogue: Catalogue, options: OdditiesOptions): Odditi
       const kind = kindOf(model, logTeff[i] + st * random.normal(), logL[i] + sl * random.normal());
       if (kind !== null) found.set(kind, (found.get(kind) ?? 0) + 1);
     }
-    for (const [kind, count] of found) {
-      const probability = (count / draws) * (member === null ? 1 : member[i] || 0);
+    const chances = new Map<OddityKind, number>();
+    for (const [kind, count] of found) chances.set(kind, count / draws);
+    const common = 1 - [...chances.values()].reduce((a, b) => a + b, 0);
+    chances.set('equal-mass binary', common * pairProbability(model, logTeff[i], logL[i], st, sl, pairFraction));
+    for (const [kind, chance] of chances) {
+      const probability = chance * (member === null ? 1 : member[i] || 0);
       if (probability < leastProbability) continue;
       const name = names?.[i] == null ? `row ${i + 1}` : String(names[i]);
       const reason = reasonFor(kind, model, logTeff[i], logL[i]);
@@ -134,7 +143,7 @@ export function oddities(catalogue: Catalogue, options: OdditiesOptions): Odditi
     }
   }
   const list = (kind: OddityKind) =>
-    Object.freeze((lists.get(kind) ?? []).sort((a, b) => b.probability - a.probability || a.row - b.row));
+    Object.freeze([...(lists.get(kind) ?? [])].sort((a, b) => b.probability - a.probability || a.row - b.row));
   const notes: string[] = [];
   if (member === null) notes.push('No membership probabilities are known: every star counts as a member.');
   if (eT === null || eL === null) notes.push('No errors of log_teff and log_l: 0.008 and 0.03 dex were taken.');
@@ -217,9 +226,22 @@ function kindOf(model: Model, logTeff: number, logL: number): OddityKind | null 
     const inBand = logL > zero - 0.3 && (Number.isNaN(end) || logL < end + 0.2);
     return inBand ? 'blue straggler' : null;
   }
-  const above = logL - interpolate(model.sequence.x, model.sequence.y, logTeff);
-  const pair = above > PAIR_BAND[0] && above < PAIR_BAND[1] && logL - above < turnoff.logL - BELOW_TURNOFF;
-  return pair ? 'equal-mass binary' : null;
+  return null;
+}
+
+/** Probability that a star below the turnoff is a pair of equal stars and no single one. */
+function pairProbability(model: Model, logTeff: number, logL: number, st: number, sl: number, prior: number): number {
+  const { x, y } = model.sequence;
+  const above = logL - interpolate(x, y, logTeff);
+  if (!(logL - above < model.turnoff.logL - BELOW_TURNOFF)) return 0;
+  const step = 0.005;
+  const slope = (interpolate(x, y, logTeff + step) - interpolate(x, y, logTeff - step)) / (2 * step);
+  const sigma = Math.hypot(sl, (slope || 0) * st, PAIR_SPREAD);
+  const density = (height: number) => Math.exp(-0.5 * ((above - height) / sigma) ** 2) / sigma;
+  const pair = prior * density(PAIR);
+  // Neither: a wide spread of unequal pairs and strangers, so that a star far from both is no pair.
+  const neither = 0.1 / 1.5;
+  return pair / (pair + (1 - prior) * density(0) + neither);
 }
 
 function reasonFor(kind: OddityKind, model: Model, logTeff: number, logL: number): string {

@@ -81,7 +81,10 @@ export const MASS_LUMINOSITY_RELATIONS: Readonly<Record<MassLuminosityName, Publ
   ),
 });
 
-/** Coefficients of R = a M^2 + b M + c, solar units, 0.179 to 1.5 solar masses. Source: Eker et al. 2018 (from memory). */
+/**
+ * Coefficients of R = a M^2 + b M + c, solar units, 0.179 to 1.5 solar masses. Source: Eker et al. 2018 (from memory); its
+ * constant is uncertain by 0.08, so that it says little below 0.4 solar masses.
+ */
 const EKER_RADIUS = { a: 0.438, b: 0.479, c: 0.075, from: 0.179, to: 1.5 } as const;
 
 /** Piecewise mass-radius relation. Source: Demircan & Kahraman 1991, Ap&SS 181, 313 (from memory). */
