@@ -171,7 +171,7 @@ const WAYS: readonly (readonly [RadiusWay, Quantity])[] = [
   ['model', 'model'],
 ];
 /** Draws of all stars are kept up to this many numbers a quantity. */
-const MOST_KEPT = 4e7;
+const MOST_KEPT = 4e6;
 
 /**
  * Radii of the stars of a cluster by three ways: luminosity and temperature (Stefan-Boltzmann); angular diameter from a

@@ -284,7 +284,7 @@ function checkBreaks(stars: RelationStars, breaks: readonly number[], caller: st
     }
     if (upTo - before < LEAST_STARS) {
       throw new RangeError(
-        `${caller}: only ${upTo - before} stars on piece ${k + 1} of ${breaks.length + 1} with breaks at ${breaks.map(solar).join(', ')}; each piece needs ${LEAST_STARS} (stars span ${range}).`,
+        `${caller}: ${upTo - before} stars on piece ${k + 1} of ${breaks.length + 1} with breaks at ${breaks.map(solar).join(', ')}; each piece needs ${LEAST_STARS} (stars span ${range}).`,
       );
     }
     before = upTo;
