@@ -1,4 +1,4 @@
-import { SkyIndex } from '../numeric/sky-index';
+import { SkyIndex, skyOrder } from '../numeric/sky-index';
 import { checkChoice, checkOptions, checkRange, describe } from '../quantity/options';
 import { Catalogue } from './catalogue';
 import type { ColumnData, ColumnValues } from './columns';
@@ -61,8 +61,10 @@ export function crossMatch(left: Catalogue, right: Catalogue, options: CrossMatc
         `${leftSky.errors ? 'right' : 'left'} lacks them. Leave sigmas out to match by radius alone.`,
     );
   }
-  const pairs = findPairs(leftSky, rightSky, radiusArcsec, sigmas, mode, join);
-  const density = localDensity(leftSky, rightSky, pairs.left, pairs.right);
+  // Left rows in order of the sky, so that neighbours in time are neighbours in memory.
+  const order = skyOrder(leftSky.ra, leftSky.dec, radiusArcsec);
+  const pairs = findPairs(leftSky, rightSky, order, radiusArcsec, sigmas, mode, join);
+  const density = localDensity(leftSky, rightSky, order, pairs);
   const { match, chance, prior } = matchProbabilities(leftSky, rightSky, pairs, density, radiusArcsec);
   return joined(
     left,
@@ -85,6 +87,7 @@ export function crossMatch(left: Catalogue, right: Catalogue, options: CrossMatc
 function findPairs(
   left: SkyPlaces,
   right: SkyPlaces,
+  order: Int32Array,
   radius: number,
   sigmas: number | undefined,
   mode: 'best' | 'all' | 'symmetric',
@@ -92,8 +95,6 @@ function findPairs(
 ): Pairs {
   const nLeft = left.ra.length;
   const index = new SkyIndex(right.ra, right.dec, radius);
-  // Left rows in order of the sky, so that neighbours in time are neighbours in memory.
-  const order = new SkyIndex(left.ra, left.dec, radius).rows;
   const all = mode === 'all';
   let li = new Int32Array(all ? 1024 : 0);
   let rj = new Int32Array(all ? 1024 : 0);

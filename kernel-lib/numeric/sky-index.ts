@@ -32,25 +32,9 @@ export class SkyIndex {
     this.#radius = degrees;
     // A last-bit allowance, so that a star on the rim is in from either side.
     this.#limit = (2 * Math.sin((degrees * RADIANS_PER_DEGREE) / 2)) ** 2 * (1 + 1e-12);
-    this.#zones = Math.max(1, Math.min(Math.floor(180 / degrees), 1 << 20, 16 * n));
-    let rows = new Int32Array(n);
-    const turn = new Uint32Array(n);
-    const zone = new Int32Array(n);
-    let count = 0;
-    for (let i = 0; i < n; i++) {
-      if (!Number.isFinite(ra[i]) || !Number.isFinite(dec[i])) continue;
-      rows[count++] = i;
-      turn[i] = turnOf(ra[i]);
-      zone[i] = this.#zoneOf(dec[i]);
-    }
-    rows = sortedBy(rows.subarray(0, count), turn, 0);
-    rows = sortedBy(rows, turn, 16);
-    const start = new Int32Array(this.#zones + 1);
-    for (let k = 0; k < count; k++) start[zone[rows[k]] + 1]++;
-    for (let z = 0; z < this.#zones; z++) start[z + 1] += start[z];
-    const next = start.slice();
-    const ordered = new Int32Array(count);
-    for (let k = 0; k < count; k++) ordered[next[zone[rows[k]]]++] = rows[k];
+    this.#zones = zoneCount(n, degrees);
+    const { ordered, start, turn } = sortSky(ra, dec, this.#zones);
+    const count = ordered.length;
     this.rows = ordered;
     this.#start = start;
     this.#turn = new Uint32Array(count);
@@ -73,8 +57,8 @@ export class SkyIndex {
     const z = Math.sin(dec * RADIANS_PER_DEGREE);
     // A hair wider than the radius: rounding of the zones must not lose a star.
     const wide = this.#radius * (1 + 1e-9) + 1e-12;
-    const first = this.#zoneOf(Math.max(-90, dec - wide));
-    const last = this.#zoneOf(Math.min(90, dec + wide));
+    const first = zoneOf(Math.max(-90, dec - wide), this.#zones);
+    const last = zoneOf(Math.min(90, dec + wide), this.#zones);
     const ratio = Math.abs(dec) + wide < 90 ? Math.sin(wide * RADIANS_PER_DEGREE) / cd : 2;
     const half = ratio < 1 ? (Math.asin(ratio) / (2 * Math.PI)) * (1 + 1e-9) * TURN + 2 : TURN;
     const centre = turnOf(ra);
@@ -128,10 +112,46 @@ export class SkyIndex {
     this.found = found;
     this.chord2 = chord2;
   }
+}
 
-  #zoneOf(dec: number): number {
-    return Math.min(this.#zones - 1, Math.floor(((dec + 90) / 180) * this.#zones));
+/** Rows with a position in the order that a {@link SkyIndex} of that radius has: zone by zone, along right ascension. */
+export function skyOrder(ra: Float64Array, dec: Float64Array, radiusArcsec: number): Int32Array {
+  return sortSky(ra, dec, zoneCount(ra.length, radiusArcsec / 3600)).ordered;
+}
+
+function zoneCount(rows: number, degrees: number): number {
+  return Math.max(1, Math.min(Math.floor(180 / degrees), 1 << 20, 16 * rows));
+}
+
+function zoneOf(dec: number, zones: number): number {
+  return Math.min(zones - 1, Math.floor(((dec + 90) / 180) * zones));
+}
+
+function sortSky(
+  ra: Float64Array,
+  dec: Float64Array,
+  zones: number,
+): { ordered: Int32Array; start: Int32Array; turn: Uint32Array } {
+  const n = ra.length;
+  let rows = new Int32Array(n);
+  const turn = new Uint32Array(n);
+  const zone = new Int32Array(n);
+  let count = 0;
+  for (let i = 0; i < n; i++) {
+    if (!Number.isFinite(ra[i]) || !Number.isFinite(dec[i])) continue;
+    rows[count++] = i;
+    turn[i] = turnOf(ra[i]);
+    zone[i] = zoneOf(dec[i], zones);
   }
+  rows = sortedBy(rows.subarray(0, count), turn, 0);
+  rows = sortedBy(rows, turn, 16);
+  const start = new Int32Array(zones + 1);
+  for (let k = 0; k < count; k++) start[zone[rows[k]] + 1]++;
+  for (let z = 0; z < zones; z++) start[z + 1] += start[z];
+  const next = start.slice();
+  const ordered = new Int32Array(count);
+  for (let k = 0; k < count; k++) ordered[next[zone[rows[k]]]++] = rows[k];
+  return { ordered, start, turn };
 }
 
 /** Right ascension as a 32-bit fraction of a turn. */
