@@ -4,6 +4,7 @@ import './notebook/install';
 export type { ColumnTable } from 'arquero';
 export { Catalogue, type CatalogueParts } from './catalogue/catalogue';
 export type { ColumnData, ColumnInfo, ColumnKind, ColumnValues } from './catalogue/columns';
+export { type CrossMatchOptions, crossMatch } from './catalogue/cross-match';
 export { type AstrometricNoiseOptions, astrometricNoise } from './catalogue/cuts/astrometric-noise';
 export { type ConeOptions, cone } from './catalogue/cuts/cone';
 export type { Cut } from './catalogue/cuts/cut';
@@ -12,6 +13,8 @@ export { insidePolygon, type PolygonOptions } from './catalogue/cuts/inside-poly
 export { magnitudeRange } from './catalogue/cuts/magnitude-range';
 export { parallaxSignal } from './catalogue/cuts/parallax-signal';
 export { type CatalogueRow, where } from './catalogue/cuts/where';
+export { type EpochOptions, propagateEpoch } from './catalogue/epoch';
+export { withGalactic } from './catalogue/galactic-columns';
 export type { HistoryStep } from './catalogue/history';
 export type { MissingValues } from './catalogue/read/declared-missing';
 export type { BadCells } from './catalogue/read/raw-table';
