@@ -27,7 +27,7 @@ export interface MainSequenceRadii {
  * @param options metallicity: [Fe/H], dex, default 0
  * @returns solar radii; NaN where the mass lies outside the models (0.1 to 100)
  * @throws TypeError on an unknown option
- * @example mainSequenceRadii([1]).greatest[0] // => 1.6
+ * @example mainSequenceRadii([1]).greatest[0] // => 1.71
  * Source: Tout et al. 1996, MNRAS 281, 257; Hurley, Pols & Tout 2000, MNRAS 315, 543; the margins are this library's.
  */
 export function mainSequenceRadii(

@@ -92,7 +92,7 @@ const CLUMP_ACCURACY = 0.1;
  *
  * Rules: white dwarf: radius below 0.05 solar. Blue straggler: in the main-sequence band, hotter by 0.015 dex than the hottest point of the
  * isochrone and brighter than 0.1 dex below the turnoff. Equal-mass binary, below the turnoff: height over the isochrone at its
- * temperature, weighed between 0.30 dex (two equal stars) and 0 (a single star), with pairFraction as the prior. Red clump: a giant within 0.03 dex in temperature and 0.2 dex in luminosity of the model's core-helium-burning
+ * temperature of 0.15 to 0.45 dex, weighed between 0.30 dex (two equal stars) and 0 (a single star), with pairFraction as the prior. Red clump: a giant within 0.03 dex in temperature and 0.2 dex in luminosity of the model's core-helium-burning
  * giants. Giants and supergiants: see evolutionaryGroup.
  * @param catalogue with log_teff and log_l (physicalProperties), membershipProbability if known
  * @param options age (Gyr), metallicity, leastProbability, pairFraction, samples, seed
@@ -234,6 +234,7 @@ function pairProbability(model: Model, logTeff: number, logL: number, st: number
   const { x, y } = model.sequence;
   const above = logL - interpolate(x, y, logTeff);
   if (!(logL - above < model.turnoff.logL - BELOW_TURNOFF)) return 0;
+  if (!(Math.abs(above - PAIR) < PAIR / 2)) return 0;
   const step = 0.005;
   const slope = (interpolate(x, y, logTeff + step) - interpolate(x, y, logTeff - step)) / (2 * step);
   const sigma = Math.hypot(sl, (slope || 0) * st, PAIR_SPREAD);
