@@ -16,7 +16,7 @@ export interface BrokenLineOptions {
   breaks?: number | readonly number[];
   /** Whether the pieces join at the breaks. Default: true. */
   continuous?: boolean;
-  /** Effective number of posterior draws wanted; sampling goes on until it is reached or the steps allowed are spent. Default: 1000. 0: best fit only. */
+  /** Effective number of posterior draws wanted; sampling goes on until half of it is reached or the steps allowed are spent. Default: 1000. 0: best fit only. */
   draws?: number;
   /** Default: 1. */
   seed?: number;
@@ -352,7 +352,7 @@ function sample(
   for (let round = 0, steps = Math.ceil(draws / 2); ; round++, steps *= 2) {
     const chain = sampleEnsemble(logPosterior, from, d, stream.fork(4 + round), { steps, thin: THIN, onProgress });
     const found = worst(chain.samples, walkers, d);
-    if (chain.steps < steps || found.effectiveSampleSize >= draws || round === 2) {
+    if (chain.steps < steps || found.effectiveSampleSize >= draws / 2 || round === 1) {
       return { samples: chain.samples, ...found };
     }
     from = chain.samples.slice((chain.steps - 1) * walkers * d);
