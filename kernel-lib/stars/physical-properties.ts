@@ -1,47 +1,30 @@
 import type { Catalogue } from '../catalogue/catalogue';
 import type { ColumnData } from '../catalogue/columns';
-import { deredden } from '../extinction/deredden';
-import { bolometricCorrection } from '../photometry/bolometric-correction';
-import { temperatureFromColour } from '../photometry/colour-temperature';
 import { spectralClass } from '../photometry/spectral-class';
-import { type Band, bandsOfColour, type ColourName } from '../quantity/band';
-import { SOLAR_BOLOMETRIC_MAGNITUDE, SOLAR_TEMPERATURE } from '../quantity/constants';
-import type { Measured } from '../quantity/measured';
-import { checkOptions, checkRange, describe } from '../quantity/options';
+import { type Band, bandsOfColour } from '../quantity/band';
+import { checkOptions } from '../quantity/options';
 import { STAR_COLUMNS } from './columns';
 import { type PhotometricErrors, propagated, slope } from './error-propagation';
-import { observedColour, preferredColour, preferredMagnitude } from './observed-colour';
+import { type HrPlaces, type HrQuantity, locate, PER_MAGNITUDE, placeStars } from './hr-place';
+import { observedColour } from './observed-colour';
+import { type PhysicalPropertiesOptions, type PropertySettings, settle } from './property-settings';
 
-/** Options of `physicalProperties`. */
-export interface PhysicalPropertiesOptions {
-  /**
-   * Distance, pc: one for all stars, with or without its error, or one a star, as a list of shape (n) or the name of a column.
-   */
-  readonly distance: number | Measured | ArrayLike<number> | string;
-  /** Standard errors of distances given one a star, pc, shape (n) or the name of a column. Default: none. */
-  readonly distanceError?: ArrayLike<number> | string;
-  /** Reddening E(B-V), mag, -0.2 to 10, with or without its error. */
-  readonly ebv: number | Measured;
-  /** [Fe/H], dex, -4 to 1. Default 0. */
-  readonly metallicity?: number;
-  /** Colour that gives the temperature. Default: the best the catalogue has, BP-RP before B-V. */
-  readonly colour?: ColourName;
-  /** Band that gives the luminosity. Default: G with Gaia colours, else V. */
-  readonly magnitude?: Band;
-  /** Colour-temperature scale by name, as temperatureFromColour takes it. Default: its default for the colour. */
-  readonly scale?: string;
-  /** A(V) / E(B-V). Default 3.1. */
-  readonly rV?: number;
-  /** Extinction law by name. Default `CCM89`. */
-  readonly law?: string;
-}
+export type { PhysicalPropertiesOptions } from './property-settings';
 
-const OPTIONS = ['distance', 'distanceError', 'ebv', 'metallicity', 'colour', 'magnitude', 'scale', 'rV', 'law'];
-const LOG_SOLAR_TEMPERATURE = Math.log10(SOLAR_TEMPERATURE);
+const OPTIONS = [
+  'distance',
+  'distanceError',
+  'ebv',
+  'metallicity',
+  'colour',
+  'magnitude',
+  'scale',
+  'logGravity',
+  'rV',
+  'law',
+];
 /** Step in colour for slopes, mag: small against the bends of the scales, large against rounding. */
 const COLOUR_STEP = 0.01;
-/** Change of log L by 1 mag. */
-const PER_MAGNITUDE = -0.4;
 
 /**
  * A star's place on the HR diagram: magnitudes and colours are dereddened, colour gives temperature, temperature the
@@ -51,7 +34,10 @@ const PER_MAGNITUDE = -0.4;
  * - `..._error`: the star's own, from its photometry (and its own distance, if distances are given one a star), to first order,
  *   with colour and magnitude correlated where they share a band;
  * - `..._shared_error`: from the error of the one distance and of the one reddening: it moves all stars together;
- * - the accuracy of the colour-temperature scale, stated in the history: it moves neighbouring stars together.
+ * - the accuracy of the scales, as their authors state it, in the history: it moves neighbouring stars together.
+ *
+ * Giants have other temperatures and bolometric corrections than dwarfs of their colour: gravity is estimated from the place itself,
+ * with a mass of L^(1/4) solar, and the relations are read again with it, unless logGravity says what it is.
  * Also `intrinsic_colour`, `absolute_magnitude` (mag) and `spectral_class` (of a dwarf of that temperature).
  * @param catalogue with a colour (its own column or both magnitudes) and a magnitude by role
  * @returns the catalogue with the columns added; NaN where a value is missing or outside the range of the relations, counted by
@@ -66,7 +52,7 @@ export function physicalProperties(catalogue: Catalogue, options: PhysicalProper
   checkOptions(caller, options, OPTIONS);
   const settings = settle(caller, catalogue, options);
   const { ebv } = settings;
-  const stars = place(catalogue, settings, ebv.value);
+  const stars = placeStars(catalogue, settings, ebv.value);
   const errors = ownErrors(caller, catalogue, settings, stars);
   const shared = sharedErrors(catalogue, settings, stars);
   const radius = stars.logR.map((v) => 10 ** v);
@@ -94,132 +80,8 @@ export function physicalProperties(catalogue: Catalogue, options: PhysicalProper
   ];
   const action = `physical properties ${base}: ${describeSettings(settings)}`;
   return catalogue.withColumns(columns, action, {
-    note: [...errors.notes, ...reasons(catalogue, settings, stars)].join('; '),
+    note: [...scaleNotes(settings, stars), ...errors.notes, ...reasons(catalogue, settings, stars)].join('; '),
   });
-}
-
-interface Settings {
-  readonly colour: ColourName;
-  readonly band: Band;
-  readonly metallicity: number;
-  readonly scale: string | undefined;
-  readonly rV: number;
-  readonly law: string;
-  readonly ebv: { readonly value: number; readonly error: number };
-  readonly distance: {
-    /** One for all stars or one a star, pc. */
-    readonly value: number | ArrayLike<number>;
-    /** The same for its error, pc. */
-    readonly error: number | ArrayLike<number>;
-    readonly each: boolean;
-  };
-}
-
-function settle(caller: string, catalogue: Catalogue, options: PhysicalPropertiesOptions): Settings {
-  const { metallicity = 0, rV = 3.1, law = 'CCM89', scale } = options;
-  checkRange(caller, 'metallicity', metallicity, -4, 1, 'dex');
-  const colour = options.colour ?? preferredColour(catalogue);
-  if (colour === null) {
-    throw new Error(
-      `${caller}: ${catalogue.source} has no colour and no two magnitudes with known roles. Give roles when reading.`,
-    );
-  }
-  bandsOfColour(colour);
-  const band = options.magnitude ?? preferredMagnitude(catalogue, colour);
-  if (band === null) {
-    throw new Error(
-      `${caller}: ${catalogue.source} has no magnitude to go with ${colour}. Give a role such as magnitude.V when reading.`,
-    );
-  }
-  const ebv = withError(options.ebv);
-  if (ebv === null) {
-    throw new TypeError(
-      `${caller}: ebv must be E(B-V) in mag, a number or a measured value, got ${describe(options.ebv)}; pass ebv: 0 for none.`,
-    );
-  }
-  checkRange(caller, 'ebv', ebv.value, -0.2, 10, 'mag');
-  const distance = settleDistance(caller, catalogue, options);
-  return { colour, band, metallicity, scale, rV, law, ebv, distance };
-}
-
-function settleDistance(
-  caller: string,
-  catalogue: Catalogue,
-  options: PhysicalPropertiesOptions,
-): Settings['distance'] {
-  const { distance, distanceError } = options;
-  const one = withError(distance);
-  if (one !== null) {
-    if (distanceError !== undefined) {
-      throw new TypeError(
-        `${caller}: distanceError goes with distances given one a star; give one distance as a measured value.`,
-      );
-    }
-    if (!(one.value > 0)) throw new RangeError(`${caller}: distance must be positive, in pc, got ${one.value}.`);
-    return { value: one.value, error: one.error, each: false };
-  }
-  const list = (value: unknown, name: string): ArrayLike<number> => {
-    const values = typeof value === 'string' ? catalogue.numbers(value) : (value as ArrayLike<number>);
-    if (values === null || typeof values !== 'object' || typeof values.length !== 'number') {
-      throw new TypeError(
-        `${caller}: ${name} must be pc: a number, a measured value, a list or a column's name, got ${describe(value)}.`,
-      );
-    }
-    if (values.length !== catalogue.rowCount) {
-      throw new RangeError(`${caller}: ${name} has ${values.length} values for ${catalogue.rowCount} stars.`);
-    }
-    return values;
-  };
-  return {
-    value: list(distance, 'distance'),
-    error: distanceError === undefined ? 0 : list(distanceError, 'distanceError'),
-    each: true,
-  };
-}
-
-/** Value and half of the 68 % interval; null for what is neither a number nor a measured value. */
-function withError(quantity: unknown): { value: number; error: number } | null {
-  if (typeof quantity === 'number') return { value: quantity, error: 0 };
-  if (quantity === null || typeof quantity !== 'object') return null;
-  const { value, lower, upper } = quantity as Partial<Measured>;
-  if (typeof value !== 'number' || typeof lower !== 'number' || typeof upper !== 'number') return null;
-  return { value, error: (upper - lower) / 2 };
-}
-
-/** Places of all stars, shape (n). */
-interface Places {
-  readonly colour: Float64Array;
-  readonly absolute: Float64Array;
-  readonly logT: Float64Array;
-  readonly logL: Float64Array;
-  readonly logR: Float64Array;
-}
-
-function place(catalogue: Catalogue, settings: Settings, ebv: number): Places {
-  const { colour, band, rV, law, distance } = settings;
-  const corrected = deredden(catalogue, { ebv, rV, law });
-  const intrinsic = observedColour('physicalProperties', corrected, colour).values;
-  const magnitude = corrected.numbers(`magnitude.${band}`);
-  const absolute = magnitude.map((m, i) => {
-    const pc = typeof distance.value === 'number' ? distance.value : distance.value[i];
-    return pc > 0 ? m - 5 * Math.log10(pc) + 5 : Number.NaN;
-  });
-  return { colour: intrinsic, absolute, ...locate(intrinsic, absolute, settings) };
-}
-
-/** Temperature, luminosity and radius from intrinsic colour and absolute magnitude. */
-function locate(
-  colour: Float64Array,
-  absolute: Float64Array,
-  settings: Settings,
-): Pick<Places, 'logT' | 'logL' | 'logR'> {
-  const { band, metallicity, scale } = settings;
-  const temperature = temperatureFromColour(colour, { colour: settings.colour, metallicity, scale });
-  const correction = bolometricCorrection(temperature, { band, metallicity });
-  const logT = temperature.map(Math.log10);
-  const logL = absolute.map((m, i) => PER_MAGNITUDE * (m + correction[i] - SOLAR_BOLOMETRIC_MAGNITUDE));
-  const logR = logL.map((l, i) => 0.5 * l - 2 * (logT[i] - LOG_SOLAR_TEMPERATURE));
-  return { logT, logL, logR };
 }
 
 /** Errors in dex, shape (n). */
@@ -232,21 +94,23 @@ interface Errors {
 function ownErrors(
   caller: string,
   catalogue: Catalogue,
-  settings: Settings,
-  stars: Places,
+  settings: PropertySettings,
+  stars: HrPlaces,
 ): Errors & { notes: string[] } {
   const { errors, notes } = photometricErrors(caller, catalogue, settings);
   const cooler = locate(
     stars.colour.map((c) => c + COLOUR_STEP),
     stars.absolute,
+    stars.logGravity,
     settings,
   );
   const hotter = locate(
     stars.colour.map((c) => c - COLOUR_STEP),
     stars.absolute,
+    stars.logGravity,
     settings,
   );
-  const by = (key: 'logT' | 'logL' | 'logR') => slope(hotter[key], stars[key], cooler[key], COLOUR_STEP);
+  const by = (key: HrQuantity) => slope(hotter[key], stars[key], cooler[key], COLOUR_STEP);
   const own = {
     logT: propagated(errors, by('logT'), 0),
     logL: propagated(errors, by('logL'), PER_MAGNITUDE),
@@ -267,7 +131,7 @@ function ownErrors(
 function photometricErrors(
   caller: string,
   catalogue: Catalogue,
-  settings: Settings,
+  settings: PropertySettings,
 ): { errors: PhotometricErrors; notes: string[] } {
   const { colour, band } = settings;
   const n = catalogue.rowCount;
@@ -297,14 +161,14 @@ function photometricErrors(
 }
 
 /** What one distance and one reddening, each off by its error, would do to each star. */
-function sharedErrors(catalogue: Catalogue, settings: Settings, stars: Places): Errors {
+function sharedErrors(catalogue: Catalogue, settings: PropertySettings, stars: HrPlaces): Errors {
   const { distance, ebv } = settings;
   const modulus = distance.each ? 0 : (5 / Math.LN10) * ((distance.error as number) / (distance.value as number));
   const [less, more] =
     ebv.error > 0
-      ? [place(catalogue, settings, ebv.value - ebv.error), place(catalogue, settings, ebv.value + ebv.error)]
+      ? [-1, 1].map((side) => placeStars(catalogue, settings, ebv.value + side * ebv.error, stars.logGravity))
       : [stars, stars];
-  const join = (key: 'logT' | 'logL' | 'logR', perMagnitude: number) => {
+  const join = (key: HrQuantity, perMagnitude: number) => {
     const byReddening = slope(less[key], stars[key], more[key], 1);
     return byReddening.map((e) => Math.hypot(e, perMagnitude * modulus));
   };
@@ -315,7 +179,21 @@ function column(name: string, values: Float64Array, unit: string, description: s
   return { name, values, unit, description };
 }
 
-function describeSettings(settings: Settings): string {
+/** Which scales, how good their authors say they are, and how many stars were read as more than dwarfs. */
+function scaleNotes(settings: PropertySettings, stars: HrPlaces): string[] {
+  const { scale, correctionScale, accuracy } = settings;
+  const notes = [
+    `temperatures by ${scale}, accuracy ${accuracy.temperature}`,
+    `bolometric corrections by ${correctionScale}, accuracy ${accuracy.correction}: not in the errors`,
+  ];
+  const evolved = stars.logGravity.filter((g, i) => g < 4 && !Number.isNaN(stars.logT[i])).length;
+  if (settings.logGravity === undefined && evolved > 0) {
+    notes.push(`${evolved} of low gravity by their place, read with giants' relations as far as they are`);
+  }
+  return notes;
+}
+
+function describeSettings(settings: PropertySettings): string {
   const { distance, ebv, metallicity, rV, law } = settings;
   const number = (v: number, e: number) =>
     `${Number(v.toPrecision(6))}${e > 0 ? ` ± ${Number(e.toPrecision(2))}` : ''}`;
@@ -326,7 +204,7 @@ function describeSettings(settings: Settings): string {
 }
 
 /** Why stars have no place, with numbers. */
-function reasons(catalogue: Catalogue, settings: Settings, stars: Places): string[] {
+function reasons(catalogue: Catalogue, settings: PropertySettings, stars: HrPlaces): string[] {
   const { colour, band, distance } = settings;
   const magnitude = catalogue.numbers(`magnitude.${band}`);
   const counts = { colour: 0, magnitude: 0, distance: 0, range: 0, correction: 0 };

@@ -1,4 +1,5 @@
 import { ageTurnoffDiagram } from '../../kernel-lib/diagrams/age-turnoff-diagram';
+import { colourMagnitudeDiagram } from '../../kernel-lib/diagrams/colour-magnitude-diagram';
 import { cornerDiagram } from '../../kernel-lib/diagrams/corner-diagram';
 import type { Figure } from '../../kernel-lib/diagrams/figure';
 import { hrDiagram } from '../../kernel-lib/diagrams/hr-diagram';
@@ -23,6 +24,14 @@ export function allFigures(): Record<string, Figure> {
     hr: hrDiagram(field, {
       turnoff: { logTeff: 3.95, logL: 1.4 },
       isochrones: [{ logAge: 8.85, logTeff: [3.6, 3.8, 3.95, 3.7], logL: [-0.8, 0.5, 1.6, 1.8], breaks: [0, 3] }],
+    }),
+    colourMagnitude: colourMagnitudeDiagram(field, {
+      probability,
+      modulus: 6.4,
+      ebv: 0.05,
+      isochrones: [{ logAge: 8.85, magnitudes: { B: [0.2, 4.2, 7.9], V: [0.1, 3.8, 7] }, breaks: [0, 2] }],
+      ridge: { colour: [0.1, 0.5, 1], magnitude: [7.5, 10, 13] },
+      turnoff: { colour: measuredFromSigma(0.1, 0.02), magnitude: measured(7.6, 7.4, 7.9) },
     }),
     properMotion: properMotionDiagram(field, { probability, centre: { ra: -36, dec: -13 } }),
     sky: skyMap(field, { probability }),
