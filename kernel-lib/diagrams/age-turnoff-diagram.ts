@@ -55,7 +55,9 @@ export function ageTurnoffDiagram(curves: readonly TurnoffCurve[], options: AgeT
     }
   }
   const data: FigureTrace[] = curves.map((curve, k) =>
-    curveTrace(plotText(curve.label ?? 'models'), significant(curve.age, 5), rounded(curve.position, 4), k),
+    curveTrace(plotText(curve.label ?? 'models'), significant(curve.age, 5), rounded(curve.position, 4), k, {
+      hoverinfo: 'name+x+y',
+    }),
   );
   const ageRange = agesShown(curves, age);
   const shown = curves.flatMap((c) =>

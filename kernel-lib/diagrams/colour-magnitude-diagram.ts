@@ -200,7 +200,7 @@ function ridgeTrace(ridge: ColourMagnitudeCurve): FigureTrace {
     x: rounded(ridge.colour, 4),
     y: rounded(ridge.magnitude, 4),
     line,
-    hoverinfo: 'name',
+    hoverinfo: 'skip',
   };
 }
 

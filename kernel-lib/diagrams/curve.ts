@@ -19,7 +19,7 @@ export function halvesOf(quantity: NumberOrMeasured): { minus: number; plus: num
   return minus > 0 || plus > 0 ? { minus, plus } : null;
 }
 
-/** A curve over the stars: the k-th of several, told apart by colour and by pattern. */
+/** A curve over the stars: the k-th of several, told apart by colour and by pattern. No hover box, which would hide those of the stars. */
 export function curveTrace(
   name: string,
   x: (number | null)[],
@@ -28,7 +28,7 @@ export function curveTrace(
   more: Readonly<Record<string, unknown>> = {},
 ): FigureTrace {
   const line = { color: CURVE_COLORS[k % CURVE_COLORS.length], width: 2, dash: CURVE_DASHES[k % CURVE_DASHES.length] };
-  return { type: 'scatter', mode: 'lines', name, x, y, line, hoverinfo: 'name', ...more };
+  return { type: 'scatter', mode: 'lines', name, x, y, line, hoverinfo: 'skip', ...more };
 }
 
 /** One marked place with the error bars it has. */

@@ -158,7 +158,7 @@ function zeroAgeTrace(metallicity: number, view: HrView): FigureTrace {
     x: significant(pick(line.temperature, inside), 5),
     y: significant(pick(line.luminosity, inside), 5),
     line: { color: GUIDE, width: 2.5 },
-    hoverinfo: 'name',
+    hoverinfo: 'skip',
   };
 }
 

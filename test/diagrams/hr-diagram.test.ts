@@ -93,6 +93,12 @@ describe('hrDiagram', () => {
     expect(trace['hovertemplate']).toMatch(/T = %\{x:,.0f\} ± %\{customdata\[1\]:,.0f\} K<br>L = %\{y\} ±/);
   });
 
+  it('leaves resting on a point to the stars: no curve takes the box from them', () => {
+    const curve = { logTeff: [3.7, 3.8], logL: [0, 1] };
+    const lines = hrDiagram(field, { isochrones: [curve] }).data.filter((t) => t['mode'] === 'lines');
+    expect(lines.map((t) => t['hoverinfo'])).toEqual(['skip', 'skip', 'skip']);
+  });
+
   it('breaks an isochrone where a new piece starts, and names it by its age', () => {
     const curve = { logAge: 8.8451, logTeff: [3.7, 3.8, 3.6], logL: [0, 1, 2], breaks: [0, 2] };
     const trace = named(hrDiagram(field, { isochrones: [curve] }), '700 Myr');
